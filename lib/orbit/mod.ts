@@ -1,0 +1,34 @@
+/**
+ * Any autonomous system: equilibrium, periodic orbit, exponents, phase sensitivity, diffusion.
+ *
+ * @module
+ */
+export type { NoiseSource, OscillatorSystem, SystemInput, SystemValues } from "./system.ts";
+export { type OdeDescription, odeSystem } from "./ode_system.ts";
+export {
+  type Complex,
+  type Equilibrium,
+  type EquilibriumOptions,
+  findEquilibrium,
+  type NoEquilibrium,
+  type Pole,
+  polesAt,
+} from "./equilibrium.ts";
+export {
+  extrapolateOrbits,
+  findOrbit,
+  type FindOrbitOptions,
+  type OrbitGuess,
+} from "./find_orbit.ts";
+export {
+  type Estimate,
+  Orbit,
+  type OrbitFailure,
+  type OrbitResult,
+  type OrbitSamples,
+  type Quadrature,
+  type Work,
+} from "./orbit.ts";
+export { type PhaseSensitivity, phaseSensitivity } from "./phase_sensitivity.ts";
+export { type InputSensitivity, inputSensitivity } from "./input_sensitivity.ts";
+export { type PhaseDiffusion, phaseDiffusion, type SourceDiffusion } from "./phase_diffusion.ts";

@@ -1,0 +1,496 @@
+/**
+ * The discrete period map: all stages of all steps of one period, Newton on the closed path, and the
+ * adjoint of the same map. This is the engine's hot path: everything is preallocated and nothing is
+ * allocated inside a pass.
+ *
+ * One pass condenses each step's stage unknowns to a map of the charges at its start and the period;
+ * the product of these maps with the closing and the phase condition is a small bordered system.
+ *
+ * Indices stay inside the arrays by construction; `!` says so to the compiler.
+ *
+ * @see U. Ascher, R. Mattheij, R. Russell, Numerical Solution of Boundary Value Problems for Ordinary
+ * Differential Equations (1995), ch. 5 and 7, for collocation and condensation
+ * @module
+ */
+import { factor, solve, solveTransposed } from "../numeric/lu.ts";
+import type { GaussMethod } from "../numeric/gauss.ts";
+import type { ChargeCoordinates } from "./charge_coordinates.ts";
+import {
+  assembleMatrix,
+  evaluateStages,
+  stageResidual,
+  type StageValues,
+  stageValues,
+} from "./gauss_step.ts";
+
+/** A discrete closed path: what Newton works on and what a found orbit keeps. */
+export interface Path {
+  /** Mesh as fractions of the period, shape (steps + 1,), from 0 to 1. */
+  readonly mesh: Float64Array;
+  /** Scaled stage states, shape (steps, s, n). */
+  readonly stages: Float64Array;
+  /** Scaled charges at the mesh points, shape (steps + 1, r). */
+  readonly charges: Float64Array;
+  /** Period [s]. */
+  readonly period: number;
+}
+
+/** The adjoint of the period map on its unit multiplier, per scaled charge. */
+export interface Adjoint {
+  /** Seconds per scaled charge at the mesh points, shape (steps + 1, r). */
+  readonly nodes: Float64Array;
+  /** Seconds per scaled row at the stages, shape (steps, s, n), charge rows first. */
+  readonly stages: Float64Array;
+  /** Multipliers of the stage equations' charge rows, shape (steps, s, r), for inputs that hold charge. */
+  readonly stageWeights: Float64Array;
+  /** Change of the sensitivity over one full period, relative: zero but for rounding. */
+  readonly closure: number;
+}
+
+/** The size of one Newton update. */
+export interface Update {
+  /** Largest change of a scaled state. */
+  readonly state: number;
+  /** Change of the period, relative. */
+  readonly period: number;
+}
+
+export class PeriodMap {
+  coordinates: ChargeCoordinates;
+  readonly method: GaussMethod;
+  readonly steps: number;
+  readonly mesh: Float64Array;
+  readonly stages: Float64Array;
+  readonly charges: Float64Array;
+  period = 0;
+  factorizations = 0;
+  /** Product of the step maps of the last full pass: the monodromy matrix, scaled, shape (r, r). */
+  readonly monodromy: Float64Array;
+  /** Step maps of the last full pass, shape (steps, r, r). */
+  readonly stepMaps: Float64Array;
+  readonly #values: StageValues;
+  readonly #J: Float64Array;
+  readonly #pivots: Int32Array;
+  /** Per step: columns [d stages / d charges | d stages / d period | remaining], shape (s n, r + 2). */
+  readonly #columns: Float64Array;
+  /** Per step: d (charges at the end) / d stages, shape (r, s n). */
+  readonly #output: Float64Array;
+  readonly #periodSlope: Float64Array;
+  readonly #gap: Float64Array;
+  readonly #normal: Float64Array;
+  readonly #endSlope: Float64Array;
+  readonly #endGap: Float64Array;
+  readonly #scratch: Float64Array;
+  readonly #rowScratch: Float64Array;
+  readonly #bordered: Float64Array;
+  readonly #borderedPivots: Int32Array;
+  readonly #border: Float64Array;
+  readonly #stageWork: Float64Array;
+
+  constructor(coordinates: ChargeCoordinates, method: GaussMethod, steps: number) {
+    const { n, r } = coordinates;
+    const s = method.stages;
+    const size = s * n;
+    this.coordinates = coordinates;
+    this.method = method;
+    this.steps = steps;
+    this.mesh = new Float64Array(steps + 1);
+    this.stages = new Float64Array(steps * size);
+    this.charges = new Float64Array((steps + 1) * r);
+    this.monodromy = new Float64Array(r * r);
+    this.stepMaps = new Float64Array(steps * r * r);
+    this.#values = stageValues(steps * s, coordinates);
+    this.#J = new Float64Array(steps * size * size);
+    this.#pivots = new Int32Array(steps * size);
+    this.#columns = new Float64Array(steps * size * (r + 2));
+    this.#output = new Float64Array(steps * r * size);
+    this.#periodSlope = new Float64Array(steps * r);
+    this.#gap = new Float64Array(steps * r);
+    this.#normal = new Float64Array(r);
+    this.#endSlope = new Float64Array(r);
+    this.#endGap = new Float64Array(r);
+    this.#scratch = new Float64Array(r * r);
+    this.#rowScratch = new Float64Array(2 * r);
+    this.#bordered = new Float64Array((r + 1) * (r + 1));
+    this.#borderedPivots = new Int32Array(r + 1);
+    this.#border = new Float64Array(r + 1);
+    this.#stageWork = new Float64Array(size);
+  }
+
+  /** Takes a path of the same number of steps; the end is made to coincide with the start. */
+  load({ mesh, stages, charges, period }: Path, coordinates: ChargeCoordinates): void {
+    const { r } = coordinates;
+    this.coordinates = coordinates;
+    this.mesh.set(mesh);
+    this.stages.set(stages);
+    this.charges.set(charges);
+    for (let i = 0; i < r; i++) this.charges[this.steps * r + i] = charges[i]!;
+    this.period = period;
+  }
+
+  copy(): Path {
+    return {
+      mesh: this.mesh.slice(),
+      stages: this.stages.slice(),
+      charges: this.charges.slice(),
+      period: this.period,
+    };
+  }
+
+  #stepLength(step: number): number {
+    return this.period * (this.mesh[step + 1]! - this.mesh[step]!);
+  }
+
+  /**
+   * Evaluates and factors every step at the present path, and the small bordered system.
+   *
+   * @returns the largest residual of the scaled equations; NaN where a step cannot be factored
+   */
+  linearise(): number {
+    const { coordinates, method, steps } = this;
+    const { n, r } = coordinates;
+    const s = method.stages;
+    const size = s * n;
+    const width = r + 2;
+    const values = this.#values;
+    let residual = 0;
+    for (let step = 0; step < steps; step++) {
+      const first = step * s;
+      const h = this.#stepLength(step);
+      evaluateStages(coordinates, this.stages, values, { first, count: s });
+      const JAt = step * size * size;
+      assembleMatrix(coordinates, method, values, { h, first, J: this.#J, JAt });
+      this.factorizations++;
+      if (!factor(this.#J, this.#pivots, { n: size, at: JAt, pivotsAt: step * size })) return NaN;
+      const columnsAt = step * size * width;
+      const columns = this.#columns;
+      for (let i = 0; i < s; i++) {
+        for (let row = 0; row < n; row++) {
+          const at = columnsAt + (i * n + row) * width;
+          for (let c = 0; c < r; c++) columns[at + c] = c === row ? 1 : 0;
+          let slope = 0;
+          if (row < r) {
+            for (let j = 0; j < s; j++) {
+              slope -= method.matrix[i * s + j]! * values.f[(first + j) * n + row]!;
+            }
+          }
+          columns[at + r] = slope * h / this.period;
+        }
+      }
+      const largest = stageResidual(coordinates, method, values, {
+        h,
+        first,
+        y: this.charges,
+        yAt: step * r,
+        out: columns,
+        outAt: columnsAt + r + 1,
+        stride: width,
+      });
+      if (!(largest <= residual)) residual = largest;
+      solve(this.#J, this.#pivots, columns, {
+        n: size,
+        columns: width,
+        at: JAt,
+        pivotsAt: step * size,
+        bAt: columnsAt,
+      });
+      const gap = this.#writeStepMap(step, h);
+      if (!(gap <= residual)) residual = gap;
+    }
+    if (!Number.isFinite(residual)) return NaN;
+    this.#multiply();
+    for (let row = 0; row < r; row++) this.#normal[row] = -values.f[row]! * this.period;
+    return this.#factorBorder() ? residual : NaN;
+  }
+
+  /** Evaluates the residual at the present path and reuses the factors of the last full pass. */
+  reevaluate(): number {
+    const { coordinates, method, steps } = this;
+    const { n, r } = coordinates;
+    const s = method.stages;
+    const size = s * n;
+    const width = r + 2;
+    const values = this.#values;
+    const work = this.#stageWork;
+    let residual = 0;
+    for (let step = 0; step < steps; step++) {
+      const first = step * s;
+      const h = this.#stepLength(step);
+      evaluateStages(coordinates, this.stages, values, { first, count: s });
+      const largest = stageResidual(coordinates, method, values, {
+        h,
+        first,
+        y: this.charges,
+        yAt: step * r,
+        out: work,
+        outAt: 0,
+        stride: 1,
+      });
+      if (!(largest <= residual)) residual = largest;
+      solve(this.#J, this.#pivots, work, {
+        n: size,
+        at: step * size * size,
+        pivotsAt: step * size,
+      });
+      const columnsAt = step * size * width + r + 1;
+      for (let k = 0; k < size; k++) this.#columns[columnsAt + k * width] = work[k]!;
+      const gap = this.#writeGap(step, h);
+      if (!(gap <= residual)) residual = gap;
+    }
+    if (!Number.isFinite(residual)) return NaN;
+    this.#multiplyGap();
+    return residual;
+  }
+
+  /** d (charges at the end) by the stages, the step map, the slope with the period and the gap. */
+  #writeStepMap(step: number, h: number): number {
+    const { method } = this;
+    const { n, r } = this.coordinates;
+    const s = method.stages;
+    const size = s * n;
+    const width = r + 2;
+    const values = this.#values;
+    const columnsAt = step * size * width;
+    for (let row = 0; row < r; row++) {
+      const outputAt = (step * r + row) * size;
+      let slope = 0;
+      for (let j = 0; j < s; j++) {
+        const weight = -h * method.weights[j]!;
+        const G = ((step * s + j) * n + row) * n;
+        for (let k = 0; k < n; k++) this.#output[outputAt + j * n + k] = weight * values.G[G + k]!;
+        slope += weight * values.f[(step * s + j) * n + row]!;
+      }
+      const mapAt = (step * r + row) * r;
+      for (let c = 0; c < r; c++) this.stepMaps[mapAt + c] = c === row ? 1 : 0;
+      slope /= this.period;
+      for (let k = 0; k < size; k++) {
+        const weight = this.#output[outputAt + k]!;
+        if (weight === 0) continue;
+        const from = columnsAt + k * width;
+        for (let c = 0; c < r; c++) this.stepMaps[mapAt + c]! += weight * this.#columns[from + c]!;
+        slope += weight * this.#columns[from + r]!;
+      }
+      this.#periodSlope[step * r + row] = slope;
+    }
+    return this.#writeGap(step, h);
+  }
+
+  #writeGap(step: number, h: number): number {
+    const { method } = this;
+    const { n, r } = this.coordinates;
+    const s = method.stages;
+    const size = s * n;
+    const width = r + 2;
+    const columnsAt = step * size * width + r + 1;
+    let largest = 0;
+    for (let row = 0; row < r; row++) {
+      let gap = this.charges[step * r + row]! - this.charges[(step + 1) * r + row]!;
+      for (let j = 0; j < s; j++) {
+        gap -= h * method.weights[j]! * this.#values.f[(step * s + j) * n + row]!;
+      }
+      if (!(Math.abs(gap) <= largest)) largest = Math.abs(gap);
+      const outputAt = (step * r + row) * size;
+      for (let k = 0; k < size; k++) {
+        gap += this.#output[outputAt + k]! * this.#columns[columnsAt + k * width]!;
+      }
+      this.#gap[step * r + row] = gap;
+    }
+    return largest;
+  }
+
+  /** Product of the step maps, with the end's slope by the period and its gap. */
+  #multiply(): void {
+    const { r } = this.coordinates;
+    const product = this.monodromy;
+    const next = this.#scratch;
+    product.fill(0);
+    for (let i = 0; i < r; i++) product[i * r + i] = 1;
+    for (let step = 0; step < this.steps; step++) {
+      const mapAt = step * r * r;
+      for (let i = 0; i < r; i++) {
+        for (let c = 0; c < r; c++) {
+          let value = 0;
+          for (let k = 0; k < r; k++) {
+            value += this.stepMaps[mapAt + i * r + k]! * product[k * r + c]!;
+          }
+          next[i * r + c] = value;
+        }
+      }
+      product.set(next);
+    }
+    this.#carry(this.#endSlope, this.#periodSlope);
+    this.#multiplyGap();
+  }
+
+  #multiplyGap(): void {
+    this.#carry(this.#endGap, this.#gap);
+  }
+
+  /** Sum over the steps of `added`, each carried to the end of the period. */
+  #carry(end: Float64Array, added: Float64Array): void {
+    const { r } = this.coordinates;
+    end.fill(0);
+    for (let step = 0; step < this.steps; step++) {
+      for (let i = 0; i < r; i++) {
+        let value = added[step * r + i]!;
+        const mapAt = (step * r + i) * r;
+        for (let k = 0; k < r; k++) value += this.stepMaps[mapAt + k]! * end[k]!;
+        this.#rowScratch[i] = value;
+      }
+      for (let i = 0; i < r; i++) end[i] = this.#rowScratch[i]!;
+    }
+  }
+
+  /** [[M - 1, slope], [normal, 0]]: closing condition and phase condition. */
+  #factorBorder(): boolean {
+    const { r } = this.coordinates;
+    const matrix = this.#bordered;
+    const size = r + 1;
+    let normalSize = 0;
+    for (let i = 0; i < r; i++) normalSize = Math.max(normalSize, Math.abs(this.#normal[i]!));
+    if (!(normalSize > 0)) return false;
+    for (let i = 0; i < r; i++) {
+      for (let c = 0; c < r; c++) {
+        matrix[i * size + c] = this.monodromy[i * r + c]! - (i === c ? 1 : 0);
+      }
+      matrix[i * size + r] = this.#endSlope[i]! * this.period;
+      matrix[r * size + i] = this.#normal[i]! / normalSize;
+    }
+    matrix[r * size + r] = 0;
+    return factor(matrix, this.#borderedPivots, { n: size });
+  }
+
+  /**
+   * Applies the Newton update of the last pass to the path.
+   *
+   * @param bound longest change of a scaled state and of the relative period; longer updates are cut
+   * @returns the size of the full update
+   */
+  update(bound: number): Update {
+    const { steps } = this;
+    const { n, r } = this.coordinates;
+    const size = this.method.stages * n;
+    const width = r + 2;
+    const border = this.#border;
+    for (let i = 0; i < r; i++) border[i] = -this.#endGap[i]!;
+    border[r] = 0;
+    solve(this.#bordered, this.#borderedPivots, border, { n: r + 1 });
+    const period = border[r]!;
+    const change = this.#rowScratch;
+    // First pass: the size of the update. Second pass: the update, cut where it is too long.
+    let state = 0;
+    let cut = 0;
+    for (let pass = 0; pass < 2; pass++) {
+      if (pass === 1) {
+        const longest = Math.max(state, Math.abs(period));
+        cut = longest > bound ? bound / longest : 1;
+        if (!(cut > 0)) return { state: Infinity, period: Infinity };
+      }
+      for (let i = 0; i < r; i++) change[i] = border[i]!;
+      for (let step = 0; step < steps; step++) {
+        const columnsAt = step * size * width;
+        for (let k = 0; k < size; k++) {
+          const at = columnsAt + k * width;
+          let value = this.#columns[at + r + 1]! +
+            this.#columns[at + r]! * period * this.period;
+          for (let c = 0; c < r; c++) value += this.#columns[at + c]! * change[c]!;
+          if (pass === 0) {
+            if (!(Math.abs(value) <= state)) state = Math.abs(value);
+          } else {
+            this.stages[step * size + k]! += cut * value;
+          }
+        }
+        if (pass === 1) {
+          for (let i = 0; i < r; i++) this.charges[step * r + i]! += cut * change[i]!;
+        }
+        for (let i = 0; i < r; i++) {
+          const mapAt = (step * r + i) * r;
+          let value = this.#gap[step * r + i]! +
+            this.#periodSlope[step * r + i]! * period * this.period;
+          for (let c = 0; c < r; c++) value += this.stepMaps[mapAt + c]! * change[c]!;
+          change[r + i] = value;
+        }
+        for (let i = 0; i < r; i++) change[i] = change[r + i]!;
+      }
+      if (pass === 1) {
+        for (let i = 0; i < r; i++) this.charges[steps * r + i]! += cut * change[i]!;
+      }
+    }
+    this.period *= 1 + cut * period;
+    return { state, period: Math.abs(period) };
+  }
+
+  /**
+   * The adjoint of the discrete period map on its unit multiplier, from the factors of the last full
+   * pass; swept backward, so that no period map is inverted.
+   *
+   * Injecting a unit of charge rate into a row over a stage's share of a step advances the phase by
+   * exactly the stage's sensitivity, to first order.
+   */
+  adjoint(): Adjoint {
+    const { steps } = this;
+    const { n, r } = this.coordinates;
+    const s = this.method.stages;
+    const size = s * n;
+    const nodes = new Float64Array((steps + 1) * r);
+    const stages = new Float64Array(steps * size);
+    const stageWeights = new Float64Array(steps * s * r);
+    const w = this.#border;
+    w.fill(0);
+    // The period's column is scaled by the period: w . slope = 1 reads w . (slope T) = T.
+    w[r] = this.period;
+    solveTransposed(this.#bordered, this.#borderedPivots, w, { n: r + 1 });
+    for (let i = 0; i < r; i++) nodes[steps * r + i] = w[i]!;
+    this.#sweepBack(nodes, stages, stageWeights);
+    let closure = 0;
+    let largest = 0;
+    for (let i = 0; i < r; i++) {
+      closure = Math.max(closure, Math.abs(nodes[i]! - nodes[steps * r + i]!));
+      largest = Math.max(largest, Math.abs(nodes[i]!));
+    }
+    return { nodes, stages, stageWeights, closure: closure / largest };
+  }
+
+  /** One backward sweep of the adjoint from `nodes` at the end of the period. */
+  #sweepBack(nodes: Float64Array, stages: Float64Array, stageWeights: Float64Array): void {
+    const { steps, method } = this;
+    const { n, r } = this.coordinates;
+    const s = method.stages;
+    const size = s * n;
+    const work = this.#stageWork;
+    for (let step = steps - 1; step >= 0; step--) {
+      const h = this.#stepLength(step);
+      const end = (step + 1) * r;
+      work.fill(0);
+      for (let row = 0; row < r; row++) {
+        const outputAt = (step * r + row) * size;
+        const weight = nodes[end + row]!;
+        for (let k = 0; k < size; k++) work[k]! += this.#output[outputAt + k]! * weight;
+      }
+      solveTransposed(this.#J, this.#pivots, work, {
+        n: size,
+        at: step * size * size,
+        pivotsAt: step * size,
+      });
+      for (let row = 0; row < r; row++) {
+        let value = nodes[end + row]!;
+        for (let i = 0; i < s; i++) value += work[i * n + row]!;
+        nodes[step * r + row] = value;
+      }
+      for (let j = 0; j < s; j++) {
+        const at = (step * s + j) * n;
+        for (let row = 0; row < r; row++) {
+          let value = nodes[end + row]!;
+          for (let i = 0; i < s; i++) {
+            value += method.matrix[i * s + j]! / method.weights[j]! * work[i * n + row]!;
+          }
+          stages[at + row] = value;
+          stageWeights[(step * s + j) * r + row] = work[j * n + row]!;
+        }
+        for (let row = r; row < n; row++) {
+          stages[at + row] = work[j * n + row]! / (h * method.weights[j]!);
+        }
+      }
+    }
+  }
+}

@@ -1,0 +1,316 @@
+/**
+ * Integration in time until the motion nearly closes on itself: where Newton finds its start.
+ *
+ * Indices stay inside the arrays by construction; `!` says so to the compiler.
+ *
+ * @module
+ */
+import { type GaussMethod, lagrangeBasis } from "../numeric/gauss.ts";
+import type { ChargeCoordinates } from "./charge_coordinates.ts";
+import { GaussStepper } from "./gauss_step.ts";
+import type { Path } from "./period_map.ts";
+
+/** Largest miss of the stages predicted from the step before, relative to the motion's range. */
+const STEP_TARGET = 5e-4;
+/** A miss this many times the target repeats the step. */
+const REPEAT = 8;
+/** Repeats after which a step is taken as it is: behind a stiff layer no prediction is good. */
+const REPEATS = 5;
+const STEP_TOLERANCE = 1e-7;
+const GROWTH_LIMIT = 1.5;
+const SHRINK_LIMIT = 0.25;
+const SAFETY = 0.9;
+const STEP_ATTEMPTS = 60;
+/** Smallest range a motion is measured against, scaled. */
+const RANGE_FLOOR = 1e-4;
+/** Part of the range forgotten each step, so that an early excursion does not blind the control. */
+const RANGE_DECAY = 0.002;
+/** A return closes when it misses the anchor by less than this part of the range. */
+const RETURN_DISTANCE = 0.25;
+/** A motion this far below its largest, and shrinking, is dying out. */
+const DYING = 1e-3;
+/** Consecutive steps without motion after which the system is at rest. */
+const REST_STEPS = 40;
+const REST_MOTION = 1e-9;
+/** Crossings far from the anchor before it moves on; one more at each move, up to the limit. */
+const MOST_CROSSINGS = 40;
+/** Steps without any crossing after which the anchor moves on. */
+const CYCLE_STEPS = 1500;
+const CROSSING_ITERATIONS = 12;
+const CROSSING_TOLERANCE = 1e-7;
+
+export type CycleOutcome =
+  | {
+    readonly status: "closed";
+    readonly path: Path;
+    /** Largest range of a scaled charge over the cycle. */
+    readonly size: number;
+    /** Natural logarithm of the size over that of the cycle before; NaN for the first. */
+    readonly growth: number;
+  }
+  | { readonly status: "at rest" }
+  | { readonly status: "lost"; readonly reason: string };
+
+interface Step {
+  readonly h: number;
+  /** Scaled charges at the start. */
+  readonly charges: Float64Array;
+  readonly stages: Float64Array;
+}
+
+/** Running lowest and highest values that slowly forget. */
+class Ranges {
+  readonly #low: Float64Array;
+  readonly #high: Float64Array;
+  constructor(start: Float64Array) {
+    this.#low = start.slice();
+    this.#high = start.slice();
+  }
+  widen(values: Float64Array, at = 0): void {
+    for (let i = 0; i < this.#low.length; i++) {
+      const value = values[at + i]!;
+      this.#low[i] = Math.min(value, this.#low[i]! + RANGE_DECAY * (value - this.#low[i]!));
+      this.#high[i] = Math.max(value, this.#high[i]! + RANGE_DECAY * (value - this.#high[i]!));
+    }
+  }
+  of(i: number): number {
+    return Math.max(this.#high[i]! - this.#low[i]!, RANGE_FLOOR);
+  }
+}
+
+export class Transient {
+  readonly stepper: GaussStepper;
+  steps = 0;
+  readonly #coordinates: ChargeCoordinates;
+  readonly #method: GaussMethod;
+  readonly #longestStep: number;
+  readonly #chargeRange: Ranges;
+  readonly #stateRange: Ranges;
+  #h: number;
+  /** Scaled charges now. */
+  #y: Float64Array;
+  #last: Step | undefined;
+  readonly #start: Float64Array;
+  #anchor: Float64Array;
+  #normal: Float64Array;
+  #cycle: Step[] = [];
+  #crossings = 0;
+  #allowedCrossings = 1;
+  #previousSize = NaN;
+  #largestSize = 0;
+  #resting = 0;
+
+  /** @param start scaled state, shape (n,), and its scaled charges, shape (r,) */
+  constructor(
+    coordinates: ChargeCoordinates,
+    method: GaussMethod,
+    { start, charges, firstStep, longestStep }: {
+      start: Float64Array;
+      charges: Float64Array;
+      firstStep: number;
+      longestStep: number;
+    },
+  ) {
+    this.#coordinates = coordinates;
+    this.#method = method;
+    this.stepper = new GaussStepper(coordinates, method);
+    this.#start = start.slice();
+    this.#h = firstStep;
+    this.#longestStep = longestStep;
+    this.#y = charges.slice();
+    this.#chargeRange = new Ranges(charges);
+    this.#stateRange = new Ranges(start);
+    this.#anchor = this.#y;
+    this.#normal = this.#direction(start);
+  }
+
+  /** Direction of motion at a scaled state, measured in the present ranges. */
+  #direction(state: Float64Array): Float64Array {
+    const { flow } = this.#coordinates.reducedFlow(state);
+    return flow.map((value, i) => value / this.#chargeRange.of(i) ** 2);
+  }
+
+  /** Moves the anchor of the section to the present point and forgets the cycle so far. */
+  #dropAnchor(): void {
+    const { n } = this.#coordinates;
+    const state = this.stepper.stages.slice(this.stepper.stages.length - n);
+    if (!this.#coordinates.stateOf(this.#y, 0, state, 0)) return;
+    this.#anchor = this.#y;
+    this.#normal = this.#direction(state);
+    this.#cycle = [];
+    this.#crossings = 0;
+  }
+
+  /** Signed distance of scaled charges from the section through the anchor. */
+  #section(y: Float64Array): number {
+    let value = 0;
+    for (let i = 0; i < y.length; i++) value += this.#normal[i]! * (y[i]! - this.#anchor[i]!);
+    return value;
+  }
+
+  /** Distance of scaled charges from the anchor, relative to the ranges. */
+  #miss(y: Float64Array): number {
+    let largest = 0;
+    for (let i = 0; i < y.length; i++) {
+      largest = Math.max(largest, Math.abs(y[i]! - this.#anchor[i]!) / this.#chargeRange.of(i));
+    }
+    return largest;
+  }
+
+  /**
+   * Integrates until the motion next returns to its anchor.
+   *
+   * @param stepLimit most steps this transient may have taken in all
+   */
+  nextCycle(stepLimit: number): CycleOutcome {
+    for (;;) {
+      if (this.steps >= stepLimit) {
+        return { status: "lost", reason: `no closed motion within ${stepLimit} time steps` };
+      }
+      const before = this.#section(this.#y);
+      const failure = this.#advance();
+      if (failure) return { status: "lost", reason: failure };
+      if (this.#resting >= REST_STEPS) return { status: "at rest" };
+      if (before < 0 && this.#section(this.#y) >= 0) {
+        if (this.#miss(this.#y) < RETURN_DISTANCE) return this.#close();
+        this.#crossings++;
+      }
+      const lost = this.#crossings >= this.#allowedCrossings;
+      if (lost || this.#cycle.length > CYCLE_STEPS * this.#allowedCrossings) {
+        this.#allowedCrossings = Math.min(this.#allowedCrossings + 1, MOST_CROSSINGS);
+        this.#dropAnchor();
+      }
+    }
+  }
+
+  /** Shortens the last step to end on the section and turns the cycle into a path. */
+  #close(): CycleOutcome {
+    const { r } = this.#coordinates;
+    const last = this.#cycle.pop()!;
+    const { stepper } = this;
+    const end = this.#y;
+    let low = 0;
+    let high = last.h;
+    let h = last.h;
+    const y = new Float64Array(r);
+    for (let iteration = 0; iteration < CROSSING_ITERATIONS; iteration++) {
+      h = (low + high) / 2;
+      if (iteration === 0) {
+        const start = this.#section(last.charges);
+        const slope = this.#section(end) - start;
+        h = Math.min(Math.max(-start / slope, 0.02), 0.98) * last.h;
+      }
+      stepper.stages.set(last.stages);
+      if (!stepper.solve(last.charges, { h, tolerance: STEP_TOLERANCE })) break;
+      stepper.advance(last.charges, { h, end: y });
+      const place = this.#section(y);
+      if (Math.abs(high - low) < CROSSING_TOLERANCE * last.h) break;
+      if (place < 0) low = h;
+      else high = h;
+    }
+    const closing: Step = { h, charges: last.charges, stages: stepper.stages.slice() };
+    const size = this.#cycleSize();
+    const growth = Math.log(size / this.#previousSize);
+    const path = pathOf([...this.#cycle, closing]);
+    // Time goes on from the end of the whole last step.
+    stepper.stages.set(last.stages);
+    this.#cycle.push(last);
+    this.#previousSize = size;
+    this.#largestSize = Math.max(this.#largestSize, size);
+    this.#dropAnchor();
+    if (size < DYING * this.#largestSize && growth < 0) return { status: "at rest" };
+    return { status: "closed", path, size, growth };
+  }
+
+  #cycleSize(): number {
+    const { r } = this.#coordinates;
+    let size = 0;
+    for (let i = 0; i < r; i++) {
+      let low = Infinity;
+      let high = -Infinity;
+      for (const step of this.#cycle) {
+        low = Math.min(low, step.charges[i]!);
+        high = Math.max(high, step.charges[i]!);
+      }
+      size = Math.max(size, high - low);
+    }
+    return size;
+  }
+
+  /** One accepted step; a failure in words. */
+  #advance(): string | undefined {
+    const { stepper } = this;
+    const { n, r } = this.#coordinates;
+    const lastStage = (this.#method.stages - 1) * n;
+    const end = new Float64Array(r);
+    for (let attempt = 0; attempt < STEP_ATTEMPTS; attempt++) {
+      const h = this.#h;
+      this.#predict(h);
+      const predicted = stepper.stages.slice(lastStage);
+      const solved = stepper.solve(this.#y, { h, tolerance: STEP_TOLERANCE }) &&
+        this.#coordinates.isFinite(stepper.stages, lastStage);
+      if (!solved) {
+        this.#h = h * SHRINK_LIMIT;
+        continue;
+      }
+      let miss = 0;
+      for (let k = 0; k < n; k++) {
+        const change = Math.abs(stepper.stages[lastStage + k]! - predicted[k]!);
+        miss = Math.max(miss, change / this.#stateRange.of(k));
+      }
+      const wanted = SAFETY * (STEP_TARGET / miss) ** (1 / (this.#method.stages + 1));
+      const ratio = Math.min(GROWTH_LIMIT, Math.max(SHRINK_LIMIT, wanted));
+      this.#h = Math.min(this.#longestStep, h * ratio);
+      if (miss > REPEAT * STEP_TARGET && this.#last && attempt < REPEATS) continue;
+      stepper.advance(this.#y, { h, end });
+      this.#last = { h, charges: this.#y, stages: stepper.stages.slice() };
+      this.#cycle.push(this.#last);
+      let motion = 0;
+      for (let i = 0; i < r; i++) motion = Math.max(motion, Math.abs(end[i]! - this.#y[i]!));
+      this.#resting = motion < REST_MOTION ? this.#resting + 1 : 0;
+      this.#chargeRange.widen(end);
+      this.#stateRange.widen(stepper.stages, lastStage);
+      this.#y = end;
+      this.steps++;
+      return undefined;
+    }
+    return "the equations of a time step could not be solved";
+  }
+
+  /** Starts the stages of a step of length `h` from the polynomial through those of the last one. */
+  #predict(h: number): void {
+    const last = this.#last;
+    const { n } = this.#coordinates;
+    const { nodes, stages: s } = this.#method;
+    for (let i = 0; i < s; i++) {
+      if (!last) {
+        this.stepper.stages.set(this.#start, i * n);
+        continue;
+      }
+      const basis = lagrangeBasis(nodes, 1 + nodes[i]! * h / last.h);
+      for (let k = 0; k < n; k++) {
+        let value = 0;
+        for (let j = 0; j < s; j++) value += basis[j]! * last.stages[j * n + k]!;
+        this.stepper.stages[i * n + k] = value;
+      }
+    }
+  }
+}
+
+function pathOf(cycle: readonly Step[]): Path {
+  const period = cycle.reduce((sum, step) => sum + step.h, 0);
+  const first = cycle[0]!;
+  const mesh = new Float64Array(cycle.length + 1);
+  const stages = new Float64Array(cycle.length * first.stages.length);
+  const charges = new Float64Array((cycle.length + 1) * first.charges.length);
+  let time = 0;
+  cycle.forEach((step, k) => {
+    mesh[k] = time / period;
+    stages.set(step.stages, k * step.stages.length);
+    charges.set(step.charges, k * step.charges.length);
+    time += step.h;
+  });
+  mesh[cycle.length] = 1;
+  charges.set(first.charges, cycle.length * first.charges.length);
+  return { mesh, stages, charges, period };
+}
