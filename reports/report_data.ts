@@ -1,4 +1,8 @@
-import type { DeclaredField, Figure, Stress, Verdict } from "../kernel/show/payload.ts";
+import type { Figure, Stress, Verdict } from "../kernel/show/payload.ts";
+import type { FilledField } from "../kernel/sheet/fill_sheet.ts";
+import type { Waiver } from "../kernel/sheet/revision.ts";
+
+export type { FilledField, Waiver };
 
 /** One output of a cell as the page shows it: the MIME bundle of a display, a stream or an error. */
 export type CellOutput =
@@ -29,26 +33,6 @@ export interface ReportSection {
   readonly verdicts: readonly Verdict[];
   readonly figures: readonly Figure[];
   readonly stresses: readonly Stress[];
-}
-
-/** A declared field with what the revision put into it. */
-export interface FilledField extends DeclaredField {
-  /** As the revision (or the lead) wrote it, "1.2 nH". */
-  readonly text: string;
-  /** Reason the revision gives for a choice. */
-  readonly why?: string;
-  /** Hand estimate the revision gives. */
-  readonly estimate?: string;
-}
-
-/** A verdict the lead lets pass, until a date. */
-export interface Waiver {
-  readonly template: string;
-  readonly verdict: string;
-  readonly reason: string;
-  readonly by: string;
-  /** ISO date, the last day on which it holds. */
-  readonly expires: string;
 }
 
 /** Everything the page shows. Free of clock, paths and randomness: same input, same page. */

@@ -32,8 +32,10 @@ const MESH_ROUNDS = 8;
 /** Aim below the tolerance by this factor when choosing the number of steps. */
 const MESH_MARGIN = 0.3;
 const LARGEST_REFINEMENT = 3;
-/** A mesh this much too good for the tolerance is coarsened once. */
-const TOO_GOOD = 1e-4;
+/** A mesh whose estimate is this part of the tolerance is coarsened. */
+const TOO_GOOD = 0.03;
+/** The mesh of a neighbour is kept longer: a new mesh spoils the extrapolation. */
+const TOO_GOOD_KEPT = 1e-3;
 /** An orbit must keep this part of the motion it was guessed from; less is a shrunken guess. */
 const KEPT_SIZE = 0.2;
 /** Growth per cycle below which a cycle is worth a Newton attempt. */
@@ -182,7 +184,7 @@ function continueFrom(
     begin = restage(neighbour, path, method);
   }
   search.adopt(neighbour);
-  const result = search.refine(begin);
+  const result = search.refine(begin, { kept: true });
   return result instanceof Orbit ? stableOrbit(result) : result;
 }
 
@@ -390,7 +392,7 @@ class Search {
   }
 
   /** From a path near the orbit to an orbit whose estimate meets the tolerance. */
-  refine(begin: Path): OrbitResult {
+  refine(begin: Path, { kept = false }: { kept?: boolean } = {}): OrbitResult {
     const { method, steps, tolerance } = this.#settings;
     const { n, r } = this.#coordinates;
     let path = begin;
@@ -405,7 +407,8 @@ class Search {
       }
       path = moveToMesh(path, mesh, { method, n, r });
     }
-    let coarsened = false;
+    const tooGood = kept ? TOO_GOOD_KEPT : TOO_GOOD;
+    let refined = false;
     for (let round = 0; round < MESH_ROUNDS; round++) {
       const orbit = this.#newton(path);
       if (!(orbit instanceof Orbit)) return orbit;
@@ -414,10 +417,9 @@ class Search {
         orbit.estimate.sensitivity / (SENSITIVITY_ALLOWANCE * tolerance),
       );
       const count = orbit.steps;
-      const tooGood: boolean = !coarsened && excess < TOO_GOOD && count > 2 * FEWEST_STEPS;
-      if (steps !== undefined || (excess <= 1 && !tooGood)) return orbit;
-      if (tooGood && round > 0) return orbit;
-      coarsened ||= tooGood;
+      const coarsen = !refined && excess < tooGood && count > FEWEST_STEPS;
+      if (steps !== undefined || (excess <= 1 && !coarsen)) return orbit;
+      refined ||= excess > 1;
       const ratio = (excess / MESH_MARGIN) ** (1 / (2 * method.stages));
       const next = Math.ceil(count * Math.min(Math.max(ratio, 0.5), LARGEST_REFINEMENT));
       if (next > MOST_STEPS || (round === MESH_ROUNDS - 1)) {
@@ -493,7 +495,6 @@ class Search {
       adjoint,
       weights: stencil,
       method,
-      tolerance: this.#settings.tolerance,
     });
     if (!nodes) {
       return failure("no convergence", "no state at a mesh point satisfies the equations", {

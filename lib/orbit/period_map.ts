@@ -86,6 +86,8 @@ export class PeriodMap {
   readonly #borderedPivots: Int32Array;
   readonly #border: Float64Array;
   readonly #stageWork: Float64Array;
+  /** Period at the last full pass: the unit of the bordered system's last unknown. */
+  #periodUnit = 0;
 
   constructor(coordinates: ChargeCoordinates, method: GaussMethod, steps: number) {
     const { n, r } = coordinates;
@@ -346,6 +348,7 @@ export class PeriodMap {
     const { r } = this.coordinates;
     const matrix = this.#bordered;
     const size = r + 1;
+    this.#periodUnit = this.period;
     let normalSize = 0;
     for (let i = 0; i < r; i++) normalSize = Math.max(normalSize, Math.abs(this.#normal[i]!));
     if (!(normalSize > 0)) return false;
@@ -353,7 +356,7 @@ export class PeriodMap {
       for (let c = 0; c < r; c++) {
         matrix[i * size + c] = this.monodromy[i * r + c]! - (i === c ? 1 : 0);
       }
-      matrix[i * size + r] = this.#endSlope[i]! * this.period;
+      matrix[i * size + r] = this.#endSlope[i]! * this.#periodUnit;
       matrix[r * size + i] = this.#normal[i]! / normalSize;
     }
     matrix[r * size + r] = 0;
@@ -372,17 +375,20 @@ export class PeriodMap {
     const size = this.method.stages * n;
     const width = r + 2;
     const border = this.#border;
-    for (let i = 0; i < r; i++) border[i] = -this.#endGap[i]!;
+    for (let i = 0; i < r; i++) {
+      border[i] = this.charges[i]! - this.charges[steps * r + i]! - this.#endGap[i]!;
+    }
     border[r] = 0;
     solve(this.#bordered, this.#borderedPivots, border, { n: r + 1 });
-    const period = border[r]!;
+    const period = border[r]! * this.#periodUnit;
+    const relative = Math.abs(period) / this.period;
     const change = this.#rowScratch;
     // First pass: the size of the update. Second pass: the update, cut where it is too long.
     let state = 0;
     let cut = 0;
     for (let pass = 0; pass < 2; pass++) {
       if (pass === 1) {
-        const longest = Math.max(state, Math.abs(period));
+        const longest = Math.max(state, relative);
         cut = longest > bound ? bound / longest : 1;
         if (!(cut > 0)) return { state: Infinity, period: Infinity };
       }
@@ -392,7 +398,7 @@ export class PeriodMap {
         for (let k = 0; k < size; k++) {
           const at = columnsAt + k * width;
           let value = this.#columns[at + r + 1]! +
-            this.#columns[at + r]! * period * this.period;
+            this.#columns[at + r]! * period;
           for (let c = 0; c < r; c++) value += this.#columns[at + c]! * change[c]!;
           if (pass === 0) {
             if (!(Math.abs(value) <= state)) state = Math.abs(value);
@@ -406,7 +412,7 @@ export class PeriodMap {
         for (let i = 0; i < r; i++) {
           const mapAt = (step * r + i) * r;
           let value = this.#gap[step * r + i]! +
-            this.#periodSlope[step * r + i]! * period * this.period;
+            this.#periodSlope[step * r + i]! * period;
           for (let c = 0; c < r; c++) value += this.stepMaps[mapAt + c]! * change[c]!;
           change[r + i] = value;
         }
@@ -416,8 +422,8 @@ export class PeriodMap {
         for (let i = 0; i < r; i++) this.charges[steps * r + i]! += cut * change[i]!;
       }
     }
-    this.period *= 1 + cut * period;
-    return { state, period: Math.abs(period) };
+    this.period += cut * period;
+    return { state, period: relative };
   }
 
   /**
@@ -438,7 +444,7 @@ export class PeriodMap {
     const w = this.#border;
     w.fill(0);
     // The period's column is scaled by the period: w . slope = 1 reads w . (slope T) = T.
-    w[r] = this.period;
+    w[r] = this.#periodUnit;
     solveTransposed(this.#bordered, this.#borderedPivots, w, { n: r + 1 });
     for (let i = 0; i < r; i++) nodes[steps * r + i] = w[i]!;
     this.#sweepBack(nodes, stages, stageWeights);

@@ -1,0 +1,54 @@
+/**
+ * What a cell of a notebook imports as `tankwright/notebook`: the sheet that a template asks for, and
+ * everything that can be shown.
+ *
+ * @module
+ */
+export type { TechnologyCard } from "../lib/device/technology_card.ts";
+export {
+  type Choice,
+  choice,
+  type Field,
+  type FieldValues,
+  type Fixed,
+  fixed,
+  type FixedOptions,
+  type QuantityChoiceOptions,
+  type WordChoiceOptions,
+} from "./sheet/field.ts";
+export type { FilledField } from "./sheet/fill_sheet.ts";
+export type { Revision, RevisionField, Waiver } from "./sheet/revision.ts";
+export { type Given, sheet, type SheetOptions } from "./sheet/sheet.ts";
+export type {
+  ChartAxis,
+  ChartBand,
+  ChartLimit,
+  ChartMark,
+  ChartScale,
+  ChartSeries,
+  DrawingText,
+} from "./show/chart_parts.ts";
+export { chart, type ChartOptions } from "./show/chart.ts";
+export { figure } from "./show/figure.ts";
+export { formula, type FormulaOptions } from "./show/formula.ts";
+export { type SeriesStyle, seriesStyle } from "./show/palette.ts";
+export type {
+  DeclaredField,
+  Figure,
+  Limit,
+  Payload,
+  Stress,
+  Verdict,
+  VerdictState,
+} from "./show/payload.ts";
+export { progress } from "./show/progress.ts";
+export { quantity, type QuantityOptions } from "./show/quantity.ts";
+export { type Share, shareChart, type ShareChartOptions } from "./show/share_chart.ts";
+export { show } from "./show/show.ts";
+export { type MimeBundle, PayloadShowable, Showable } from "./show/showable.ts";
+export { stress } from "./show/stress.ts";
+export { sweepChart, type SweepChartOptions } from "./show/sweep_chart.ts";
+export type { TableCell, TableColumn } from "./show/table_parts.ts";
+export { table, type TableOptions } from "./show/table.ts";
+export { verdict, type VerdictOptions } from "./show/verdict.ts";
+export { type Trace, waveform, type WaveformOptions } from "./show/waveform.ts";

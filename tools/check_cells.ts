@@ -1,0 +1,55 @@
+/**
+ * Checks every notebook in notebooks/: that it is clean source, and that its cells type-check.
+ * With `--write` it makes them clean source first.
+ *
+ * deno run -A tools/check_cells.ts [--write]
+ */
+import { checkCells, type NotebookToCheck, problemText } from "../kernel/run/check_cells.ts";
+import { NotebookError, parseNotebook } from "../kernel/run/notebook.ts";
+import { madeUpIds, notebookSource } from "../kernel/run/notebook_source.ts";
+
+const root = new URL("../", import.meta.url);
+const folder = new URL("notebooks/", root);
+const write = Deno.args.includes("--write");
+
+const problems: string[] = [];
+const toCheck: NotebookToCheck[] = [];
+for (const { name, isFile } of Deno.readDirSync(folder)) {
+  if (!isFile || !name.endsWith(".ipynb")) continue;
+  const file = new URL(name, folder);
+  const text = Deno.readTextFileSync(file);
+  try {
+    const notebook = parseNotebook(text, name);
+    toCheck.push({ notebook, base: folder.href });
+    const source = notebookSource(text);
+    if (source !== text) {
+      if (write) Deno.writeTextFileSync(file, source);
+      else {
+        const line = firstDifference(text, source);
+        problems.push(
+          `${name}:${line}: not clean source (outputs, counts, metadata, key order, indent 1); ` +
+            "run deno run -A tools/check_cells.ts --write",
+        );
+      }
+    }
+    for (const id of madeUpIds(notebook.cells)) {
+      problems.push(`${name}: cell id "${id}" was made up by an editor; give the cell a name`);
+    }
+  } catch (error) {
+    if (!(error instanceof NotebookError)) throw error;
+    problems.push(error.message);
+  }
+}
+toCheck.sort((a, b) => a.notebook.name < b.notebook.name ? -1 : 1);
+const config = decodeURIComponent(new URL("deno.json", root).pathname);
+problems.push(...(await checkCells(toCheck, config)).map(problemText));
+
+for (const problem of problems) console.error(problem);
+console.log(`${toCheck.length} notebooks, ${problems.length} problems`);
+Deno.exit(problems.length === 0 ? 0 : 1);
+
+function firstDifference(a: string, b: string): number {
+  const [left, right] = [a.split("\n"), b.split("\n")];
+  const at = left.findIndex((line, i) => line !== right[i]);
+  return (at < 0 ? left.length : at) + 1;
+}
