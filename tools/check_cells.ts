@@ -40,12 +40,13 @@ for (const { name, isFile } of Deno.readDirSync(folder)) {
     problems.push(error.message);
   }
 }
+if (toCheck.length + problems.length === 0) problems.push("notebooks/: holds no notebook");
 toCheck.sort((a, b) => a.notebook.name < b.notebook.name ? -1 : 1);
 const config = decodeURIComponent(new URL("deno.json", root).pathname);
 problems.push(...(await checkCells(toCheck, config)).map(problemText));
 
 for (const problem of problems) console.error(problem);
-console.log(`${toCheck.length} notebooks, ${problems.length} problems`);
+console.log(`notebooks: ${toCheck.length}, problems: ${problems.length}`);
 Deno.exit(problems.length === 0 ? 0 : 1);
 
 function firstDifference(a: string, b: string): number {

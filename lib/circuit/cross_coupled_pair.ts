@@ -2,9 +2,9 @@ import { resolvePassives } from "../device/resolve_passives.ts";
 import { resolveTransistor } from "../device/resolve_transistor.ts";
 import { Transistor } from "../device/transistor.ts";
 import type { TransistorSize } from "../device/transistor_parameters.ts";
+import { pairSchematic } from "./_cross_coupled_pair_schematic.ts";
 import { assemble } from "./circuit.ts";
 import { type CircuitElement, GROUND, transistorElement } from "./element.ts";
-import type { Schematic } from "./schematic.ts";
 import type { BuiltOscillator, TankDesign, Topology } from "./topology.ts";
 
 const DEFAULT_COUPLING = 0.6;
@@ -152,7 +152,19 @@ export const crossCoupledPair: Topology<CrossCoupledPairDesign> = {
     };
   },
   withCurrent: (design, current) => ({ ...design, current }),
-  schematic: pairSchematic,
+  schematic: ({ tank, pair, tail, current, mirrorRatio, ...capacitances }) =>
+    pairSchematic({
+      inductance: tank.inductance,
+      resistance: tankResistance(tank),
+      tankCapacitance: tank.capacitance,
+      pairWidth: pair.width,
+      tailWidth: tail.width,
+      mirrorWidth: tail.width / mirrorRatio,
+      referenceCurrent: current / mirrorRatio,
+      loadCapacitance: capacitances.loadCapacitance,
+      tailCapacitance: capacitances.tailCapacitance,
+      mirrorCapacitance: capacitances.mirrorCapacitance,
+    }),
   amplitude: ({ current, resistance }) => 2 / Math.PI * current * resistance,
   amplitudeFormula: {
     name: "amplitude, hard switching",
@@ -195,66 +207,4 @@ function watchedVoltages(): BuiltOscillator["watched"] {
     ...of("pair minus", { drain: "minus", gate: "plus", source: "tail" }),
     ...of("tail", { drain: "tail", gate: "mirror", source: GROUND }),
   ];
-}
-
-function pairSchematic(design: CrossCoupledPairDesign): Schematic {
-  const { tank, pair, tail, current, mirrorRatio } = design;
-  const width = (name: string, value: number) => ({ name, value: { value, unit: "m" } });
-  return {
-    width: 20,
-    height: 19,
-    symbols: [
-      { kind: "supply", name: "supply", at: [10, 1] },
-      {
-        kind: "inductor",
-        name: "coil",
-        at: [7, 3],
-        turn: 1,
-        value: { value: tank.inductance, unit: "H" },
-      },
-      { kind: "inductor", name: "", at: [13, 3], turn: 1 },
-      {
-        kind: "capacitor",
-        name: "tank capacitor",
-        at: [10, 6],
-        turn: 1,
-        value: { value: tank.capacitance, unit: "F" },
-      },
-      { kind: "transistor n", at: [6, 10], mirrored: true, ...width("pair plus", pair.width) },
-      { kind: "transistor n", at: [14, 10], ...width("pair minus", pair.width) },
-      { kind: "transistor n", at: [10, 15], ...width("tail", tail.width) },
-      {
-        kind: "transistor n",
-        at: [4, 15],
-        mirrored: true,
-        ...width("mirror", tail.width / mirrorRatio),
-      },
-      {
-        kind: "current source",
-        name: "reference current",
-        at: [4, 11],
-        value: { value: current / mirrorRatio, unit: "A" },
-      },
-      { kind: "ground", name: "", at: [10, 18] },
-      { kind: "ground", name: "", at: [4, 18] },
-    ],
-    wires: [
-      [[10, 1], [10, 3]],
-      [[9, 3], [11, 3]],
-      [[5, 3], [5, 9]],
-      [[15, 3], [15, 9]],
-      [[5, 6], [9, 6]],
-      [[11, 6], [15, 6]],
-      [[7, 10], [15, 7]],
-      [[13, 10], [5, 7]],
-      [[5, 11], [5, 12], [15, 12], [15, 11]],
-      [[10, 12], [10, 14]],
-      [[10, 16], [10, 18]],
-      [[4, 16], [4, 18]],
-      [[5, 15], [9, 15]],
-      [[4, 12], [4, 14]],
-      [[4, 13], [7, 13], [7, 15]],
-    ],
-    joints: [[10, 3], [5, 6], [15, 6], [5, 7], [15, 7], [10, 12], [4, 13], [7, 15]],
-  };
 }

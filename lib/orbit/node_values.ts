@@ -12,7 +12,7 @@ import type { ChargeCoordinates } from "./charge_coordinates.ts";
 import type { Adjoint, Path } from "./period_map.ts";
 
 /** Mesh points in the error estimate's quadrature: exact to degree 9, above the order of 4 stages. */
-const STENCIL = 10;
+const STENCIL = 16;
 const NODE_ITERATIONS = 12;
 /** A correction this small leaves an error of its square. */
 const NODE_TOLERANCE = 1e-8;

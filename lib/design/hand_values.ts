@@ -1,0 +1,151 @@
+/**
+ * Hand formulas beside the computed figures, each with the test of its own assumptions.
+ *
+ * @module
+ */
+import type { BuiltOscillator, Topology } from "../circuit/topology.ts";
+import type { TransistorOperatingPoint } from "../device/transistor_operating_point.ts";
+import { pairNoiseFactor } from "../noise/closed_forms.ts";
+import { leesonPhaseNoise } from "../noise/phase_noise.ts";
+import { BOLTZMANN } from "../quantity/constants.ts";
+import type { BiasPoint } from "./bias.ts";
+
+/** Loop gain from which the pair is taken to switch hard (common practice). */
+const HARD_SWITCHING = 2.5;
+/** Exponent of the amplitude above which a point is well below the knee. */
+const BELOW_KNEE = 0.8;
+
+/** One formula at one point. */
+export interface HandComparison {
+  readonly name: string;
+  /** TeX. */
+  readonly formula: string;
+  readonly source: string;
+  readonly unit: string;
+  readonly hand: number;
+  readonly computed: number;
+  /** Hand minus computed: in dB for dBc/Hz, else relative to the computed value [1]. */
+  readonly deviation: number;
+  /** How far the formula may be off where it holds, same measure as `deviation`. */
+  readonly allowance: number;
+  /** The assumptions that do not hold here, in words; empty where all do. */
+  readonly broken: readonly string[];
+  /** `agrees`, `does not hold here`, or `disagrees`: off by more than its assumptions allow. */
+  readonly outcome: "agrees" | "does not hold here" | "disagrees";
+}
+
+/** Operating point of a named transistor of an oscillator at a state. */
+export function transistorAt(
+  { circuit }: BuiltOscillator,
+  device: string,
+  x: Float64Array,
+): TransistorOperatingPoint {
+  const element = circuit.elements.find(({ name }) => name === device);
+  if (element?.kind !== "device" || !element.transistor) {
+    throw new RangeError(`Cannot read an operating point: there is no transistor "${device}"`);
+  }
+  const [d, g, s, b] = element.nodes.map((node) => circuit.potential(node, x));
+  return element.transistor.operatingPoint(d ?? NaN, g ?? NaN, s ?? NaN, b ?? NaN);
+}
+
+/**
+ * Loop gain, amplitude, noise factor and phase noise of a point by hand and as computed; empty
+ * where the point has no orbit.
+ *
+ * @param offset of the phase noise [Hz]
+ */
+export function handComparisons<Design>(
+  topology: Topology<Design>,
+  point: BiasPoint,
+  { offset, temperature }: { readonly offset: number; readonly temperature: number },
+): HandComparison[] {
+  const { figures, startup, oscillator, amplitudeExponent } = point;
+  if (!figures || !startup) return [];
+  const angular = 2 * Math.PI * figures.frequency;
+  const resistance = 1 / oscillator.tank.conductance(angular);
+  const state = startup.equilibrium.state;
+  const [pairName] = oscillator.parts["pair"] ?? [];
+  const [tailName] = oscillator.parts["tail"] ?? [];
+  if (pairName === undefined || tailName === undefined) return [];
+  const pair = transistorAt(oscillator, pairName, state);
+  const tail = transistorAt(oscillator, tailName, state);
+  const factor = pairNoiseFactor({
+    pairGamma: pair.noiseConductance / pair.gm,
+    tailGamma: tail.noiseConductance / tail.gm,
+    tailTransconductance: tail.gm,
+    resistance,
+    loopGain: startup.loopGain,
+  });
+  const switching = startup.loopGain >= HARD_SWITCHING ? [] : [
+    `the loop gain ${
+      startup.loopGain.toFixed(2)
+    } is below ${HARD_SWITCHING}: the pair does not switch hard`,
+  ];
+  const belowKnee = (amplitudeExponent ?? 0) >= BELOW_KNEE ? [] : [
+    `d ln A / d ln I is ${
+      (amplitudeExponent ?? NaN).toFixed(2)
+    }, below ${BELOW_KNEE}: the point is near or past the knee`,
+  ];
+  const gain = topology.loopGain({ transconductance: pair.gm, resistance });
+  const amplitude = topology.amplitude({ current: point.current, resistance });
+  const noise = leesonPhaseNoise({
+    thermalEnergy: BOLTZMANN * temperature,
+    resistance,
+    amplitude: figures.amplitude,
+    quality: resistance / (angular * oscillator.tank.inductance),
+    noiseFactor: factor.total,
+    frequency: figures.frequency,
+    offset,
+  });
+  return [
+    compare({
+      ...topology.loopGainFormula,
+      unit: "1",
+      hand: gain,
+      computed: startup.loopGain,
+      allowance: 0.1,
+      broken: [],
+    }),
+    compare({
+      ...topology.amplitudeFormula,
+      unit: "V",
+      hand: amplitude,
+      computed: figures.amplitude,
+      allowance: 0.1,
+      broken: [...switching, ...belowKnee],
+    }),
+    compare({
+      name: "noise factor",
+      formula: "F = 1 + \\gamma + \\gamma_t g_{m,t} \\tfrac{R}{4} (1 - \\tfrac{1}{a})",
+      source: "J. Bank (2006); D. Murphy, J. Rael, A. Abidi (2010), from memory; tail term derived",
+      unit: "1",
+      hand: factor.total,
+      computed: figures.noiseFactor,
+      allowance: 0.25,
+      broken: [...switching, ...belowKnee],
+    }),
+    compare({
+      name: "phase noise, with the computed amplitude",
+      formula: "L = 10 \\log \\frac{4 k T R F}{A^2} \\left(\\frac{f_0}{2 Q \\Delta f}\\right)^2",
+      source: "D. Leeson, Proc. IEEE 54 (1966) 329",
+      unit: "dBc/Hz",
+      hand: noise,
+      computed: figures.phaseNoise,
+      allowance: 1,
+      broken: [...switching, ...belowKnee],
+    }),
+  ];
+}
+
+function compare(
+  values: Omit<HandComparison, "deviation" | "outcome">,
+): HandComparison {
+  const { hand, computed, unit, allowance, broken } = values;
+  const deviation = unit === "dBc/Hz" ? hand - computed : hand / computed - 1;
+  const agrees = Math.abs(deviation) <= allowance;
+  return {
+    ...values,
+    deviation,
+    outcome: agrees ? "agrees" : broken.length > 0 ? "does not hold here" : "disagrees",
+  };
+}

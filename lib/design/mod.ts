@@ -1,0 +1,25 @@
+/**
+ * Startup, bias, limits.
+ *
+ * @module
+ */
+export { type NamedPole, startTime, type Startup, startup } from "./startup.ts";
+export {
+  type DeviceStress,
+  deviceStresses,
+  type NoiseShare,
+  type OperatingFigures,
+  operatingFigures,
+} from "./operating_figures.ts";
+export { KNEE_EXPONENT, kneeCurrent, localExponents, type Regime, regimeOf } from "./regime.ts";
+export {
+  type BiasPoint,
+  type BiasSweep,
+  biasSweep,
+  type BiasSweepOptions,
+  type CornerBias,
+  cornerBias,
+  cornerConditions,
+  logarithmicCurrents,
+} from "./bias.ts";
+export { type HandComparison, handComparisons, transistorAt } from "./hand_values.ts";
