@@ -27,12 +27,12 @@ export interface PairSchematicValues {
 }
 
 /** Columns: the reference branch, the loads, the two outputs and the line of symmetry between them. */
-const REFERENCE = 3;
-const LOAD_PLUS = 6;
-const PLUS = 9;
-const MIDDLE = 14;
-const MINUS = 19;
-const LOAD_MINUS = 22;
+const REFERENCE = 5;
+const LOAD_PLUS = 9;
+const PLUS = 12;
+const MIDDLE = 17;
+const MINUS = 22;
+const LOAD_MINUS = 25;
 /** Row of the ground symbols of the tail, its mirror and what hangs beside them. */
 const FLOOR = 20;
 
@@ -50,15 +50,20 @@ export function pairSchematic(values: PairSchematicValues): Schematic {
     tankBranch(values),
     loadBranch("plus", { output: PLUS, load: LOAD_PLUS, capacitance: values.loadCapacitance }),
     loadBranch("minus", { output: MINUS, load: LOAD_MINUS, capacitance: values.loadCapacitance }),
-    groundedCapacitor("tail capacitor", { from: [18, 15], capacitance: values.tailCapacitance }),
+    groundedCapacitor("tail capacitor", {
+      from: [MINUS, 15],
+      column: MINUS + 2,
+      capacitance: values.tailCapacitance,
+    }),
     groundedCapacitor("mirror capacitor", {
       from: [LOAD_PLUS + 2, 17],
+      column: LOAD_PLUS + 2,
       capacitance: values.mirrorCapacitance,
     }),
   ];
   const width = (value: number) => ({ value: { value, unit: "m" } });
   return {
-    width: 26,
+    width: 29,
     height: 22,
     symbols: [
       ...branches.flatMap(({ symbols }) => symbols),
@@ -81,10 +86,11 @@ export function pairSchematic(values: PairSchematicValues): Schematic {
       {
         kind: "current source",
         name: "reference current",
-        at: [REFERENCE, 12],
+        at: [REFERENCE, 13],
+        mirrored: true,
         value: { value: values.referenceCurrent, unit: "A" },
       },
-      { kind: "supply", name: "supply", at: [REFERENCE, 10] },
+      { kind: "supply", name: "supply", at: [REFERENCE, 11], mirrored: true },
       { kind: "ground", name: "", at: [MIDDLE, FLOOR] },
       { kind: "ground", name: "", at: [REFERENCE, FLOOR] },
     ],
@@ -97,8 +103,8 @@ export function pairSchematic(values: PairSchematicValues): Schematic {
       [[PLUS, 14], [PLUS, 15], [MINUS, 15], [MINUS, 14]],
       [[MIDDLE, 15], [MIDDLE, 16]],
       [[MIDDLE, 18], [MIDDLE, FLOOR]],
-      [[REFERENCE, 10], [REFERENCE, 11]],
-      [[REFERENCE, 13], [REFERENCE, 16]],
+      [[REFERENCE, 11], [REFERENCE, 12]],
+      [[REFERENCE, 14], [REFERENCE, 16]],
       [[REFERENCE, 18], [REFERENCE, FLOOR]],
       [[REFERENCE + 2, 17], [MIDDLE - 2, 17]],
       [[REFERENCE, 15], [LOAD_PLUS, 15], [LOAD_PLUS, 17]],
@@ -193,20 +199,24 @@ function loadBranch(
   };
 }
 
+/** A capacitor to ground in a column, from a point of a wire two rows above it. */
 function groundedCapacitor(
   name: string,
-  { from: [x, y], capacitance = 0 }: {
+  { from: [x, y], column, capacitance = 0 }: {
     readonly from: Point;
+    readonly column: number;
     readonly capacitance: number | undefined;
   },
 ): Branch {
   if (capacitance === 0) return { symbols: [], wires: [], joints: [] };
+  const middle: Point = [column, y + 2];
+  const wire: Point[] = column === x ? [[x, y]] : [[x, y], [column, y]];
   return {
     symbols: [
-      { kind: "capacitor", name, at: [x, y + 2], value: { value: capacitance, unit: "F" } },
-      { kind: "ground", name: "", at: [x, FLOOR] },
+      { kind: "capacitor", name, at: middle, value: { value: capacitance, unit: "F" } },
+      { kind: "ground", name: "", at: [column, FLOOR] },
     ],
-    wires: [[[x, y], [x, y + 1]], [[x, y + 3], [x, FLOOR]]],
+    wires: [[...wire, [column, y + 1]], [[column, y + 3], [column, FLOOR]]],
     joints: [[x, y]],
   };
 }

@@ -52,8 +52,8 @@ export interface Circuit {
 /**
  * Assembles elements into a circuit.
  *
- * Unknowns are the potentials of the nodes that nothing holds, in order of appearance, then the
- * winding currents. Held nodes are known potentials, not equations. Inputs are the held potentials and
+ * Unknowns are the winding currents, then the potentials of the nodes that nothing holds, each in order
+ * of appearance. Held nodes are known potentials, not equations. Inputs are the held potentials and
  * the programmed currents, in order of appearance.
  *
  * @throws RangeError for element values outside their range and for circuits without a defined
@@ -69,16 +69,7 @@ export function assemble(elements: readonly CircuitElement[]): Circuit {
     held.set(element.node, heldPotentials.length);
     heldPotentials.push(element.potential);
   }
-  const index = new Map<string, number>();
-  const visit = (node: string) => {
-    if (!held.has(node) && !index.has(node)) index.set(node, index.size);
-  };
-  for (const element of elements) {
-    if (element.kind === "inductor") element.windings.forEach((w) => w.nodes.forEach(visit));
-    else if (element.kind !== "potential") element.nodes.forEach(visit);
-  }
-  const nodeCount = index.size;
-  const names = [...index.keys()].map((node) => `potential of ${node}`);
+  const names: string[] = [];
   const firstWinding = new Map<string, number>();
   for (const element of elements) {
     if (element.kind !== "inductor") continue;
@@ -90,6 +81,16 @@ export function assemble(elements: readonly CircuitElement[]): Circuit {
           : `current of ${element.name}`,
       )
     );
+  }
+  const index = new Map<string, number>();
+  const visit = (node: string) => {
+    if (held.has(node) || index.has(node)) return;
+    index.set(node, names.length);
+    names.push(`potential of ${node}`);
+  };
+  for (const element of elements) {
+    if (element.kind === "inductor") element.windings.forEach((w) => w.nodes.forEach(visit));
+    else if (element.kind !== "potential") element.nodes.forEach(visit);
   }
   const n = names.length;
   const m = heldPotentials.length;

@@ -15,6 +15,8 @@ import { type Startup, startup } from "./startup.ts";
 const INTERMEDIATE = 3;
 /** Where in the sweep it begins: high enough to oscillate, below the deepest voltage limit. */
 const BEGIN_AT = 0.6;
+/** Orbits behind the present one that its guess is extrapolated from. */
+const TRAIL = 4;
 /** An amplitude below this part of its neighbour's is the equilibrium, not an orbit. */
 const VANISHED = 0.02;
 
@@ -85,7 +87,8 @@ interface Solved {
   readonly current: number;
   readonly oscillator: BuiltOscillator;
   readonly orbit: Orbit | undefined;
-  readonly reason?: string;
+  readonly starts?: boolean;
+  readonly reason?: string | undefined;
 }
 
 /**
@@ -123,7 +126,9 @@ export function biasSweep<Design>(
         if (current === undefined || solved[k] !== undefined) continue;
         const point = follow(build, trail as Solved[], current);
         keep(k, point);
-        trail = point.orbit ? [...trail, point].slice(-3) : trail;
+        // Below a current at which the oscillation has died there is nothing to continue.
+        if (!point.orbit && direction < 0) trail = [];
+        else if (point.orbit) trail = [...trail, point].slice(-TRAIL);
       }
     }
   }
@@ -200,50 +205,53 @@ function fromEquilibrium(oscillator: BuiltOscillator, current: number): Solved {
   if (started.status !== "found") {
     return { current, oscillator, orbit: undefined, reason: started.reason };
   }
+  const { starts } = started;
   const result = findOrbit(oscillator.circuit.system, { start: started.equilibrium });
   return result instanceof Orbit
-    ? { current, oscillator, orbit: result }
-    : { current, oscillator, orbit: undefined, reason: result.reason };
+    ? { current, oscillator, orbit: result, starts }
+    : { current, oscillator, orbit: undefined, starts, reason: result.reason };
 }
 
-/** The orbit at `wanted` from up to three neighbours, in shorter strides where one is too long. */
+/**
+ * The orbit at `wanted` from up to four neighbours, in shorter strides where one is too long and the
+ * equilibrium is unstable; last, from the equilibrium.
+ */
 function follow(
   build: (current: number) => BuiltOscillator,
   trail: readonly Solved[],
   wanted: number,
 ): Solved {
   const oscillator = build(wanted);
-  let failure = "no neighbouring orbit to continue from";
-  let near = trail;
-  for (let strides = 1; strides <= INTERMEDIATE; strides++) {
-    const last = near[near.length - 1];
-    if (!last) break;
-    for (let stride = 1; stride <= strides; stride++) {
-      const current = stride === strides
-        ? wanted
-        : last.current * (wanted / last.current) ** (stride / strides);
-      const own = stride === strides ? oscillator : build(current);
-      const result = findOrbit(own.circuit.system, {
-        start: extrapolateOrbits(near.map(({ orbit }) => orbit as Orbit), {
-          values: near.map((point) => Math.log(point.current)),
-          wanted: Math.log(current),
-        }),
-      });
-      if (!(result instanceof Orbit)) {
-        failure = result.reason;
-        break;
-      }
-      if (vanished(last, result, own)) {
-        failure = "the amplitude falls to zero: there is no orbit";
-        break;
-      }
-      if (stride === strides) return { current: wanted, oscillator: own, orbit: result };
-      near = [...near, { current, oscillator: own, orbit: result }].slice(-3);
+  const last = trail[trail.length - 1];
+  if (!last) return fromEquilibrium(oscillator, wanted);
+  const stride = (near: readonly Solved[], current: number): Solved => {
+    const own = current === wanted ? oscillator : build(current);
+    const result = findOrbit(own.circuit.system, {
+      start: extrapolateOrbits(near.map(({ orbit }) => orbit as Orbit), {
+        values: near.map((point) => Math.log(point.current)),
+        wanted: Math.log(current),
+      }),
+    });
+    const found = { current, oscillator: own };
+    if (!(result instanceof Orbit)) return { ...found, orbit: undefined, reason: result.reason };
+    if (vanished(last, result, own)) {
+      return { ...found, orbit: undefined, reason: "the amplitude falls to zero" };
     }
-    near = trail;
-  }
+    return { ...found, orbit: result };
+  };
+  const direct = stride(trail, wanted);
+  if (direct.orbit) return direct;
   const own = fromEquilibrium(oscillator, wanted);
-  return own.orbit ? own : { ...own, reason: own.reason ?? failure };
+  if (own.orbit || !own.starts) return own.orbit ? own : { ...direct, reason: own.reason };
+  let near = trail;
+  for (let k = 1; k <= INTERMEDIATE; k++) {
+    const part = k / INTERMEDIATE;
+    const point = stride(near, part < 1 ? last.current * (wanted / last.current) ** part : wanted);
+    if (!point.orbit) return { ...direct, reason: point.reason };
+    if (part === 1) return point;
+    near = [...near, point].slice(-TRAIL);
+  }
+  return direct;
 }
 
 function vanished(before: Solved, orbit: Orbit, { circuit, tank }: BuiltOscillator): boolean {

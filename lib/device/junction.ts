@@ -86,6 +86,14 @@ export class Junction {
    *   (0 at v = 0) [C], dQ/dv [F]
    */
   evaluate(v: number, out: Float64Array): void {
+    if (v === 0) {
+      // A source tied to its bulk.
+      out[0] = 0;
+      out[1] = this.#conductance;
+      out[2] = 0;
+      out[3] = this.#capacitance;
+      return;
+    }
     const x = v * this.#perEmissionVoltage;
     const conductance = this.#conductance;
     if (x < EXPONENT_FLOOR) {

@@ -129,7 +129,7 @@ function newton(system: OscillatorSystem, start: Float64Array, extra: number): N
     for (let i = 0; i < n; i++) {
       const value = values.f[i]! + added[i]! * (state[i]! - start[i]!);
       change[i] = -value;
-      if (!(Math.abs(value) <= residual)) residual = Math.abs(value);
+      residual = Math.max(residual, Math.abs(value));
       // Rows and columns to about one, so that pivoting compares like with like.
       let largest = 0;
       for (let j = 0; j < n; j++) {

@@ -2,7 +2,7 @@ import { type GaussMethod, gaussMethod } from "../numeric/gauss.ts";
 import { ChargeCoordinates } from "./charge_coordinates.ts";
 import type { Equilibrium, NoEquilibrium } from "./equilibrium.ts";
 import { moveToMesh, spreadMesh } from "./mesh.ts";
-import { nodeValues, rangeOf, stencilWeights } from "./node_values.ts";
+import { type DefectRule, defectRule, nodeValues, rangeOf } from "./node_values.ts";
 import { Orbit, type OrbitFailure, type OrbitResult, type Work } from "./orbit.ts";
 import { type Path, PeriodMap } from "./period_map.ts";
 import type { OscillatorSystem } from "./system.ts";
@@ -16,15 +16,16 @@ const SMALLEST_TOLERANCE = 1e-14;
 const DEFAULT_STAGES = 3;
 const FEWEST_STEPS = 16;
 const MOST_STEPS = 6000;
-const NEWTON_PASSES = 30;
+const NEWTON_PASSES = 24;
+/** Full passes in a row whose update did not shrink before giving up. */
+const STALLED_PASSES = 5;
 /** Longest Newton update of a scaled state. */
 const NEWTON_BOUND = 0.5;
-/** Below this update, the next pass reuses the factors. */
-const REUSE_BELOW = 0.05;
-/** With reused factors an update must shrink at least this much. */
-const REUSE_CONTRACTION = 0.1;
-/** Update that ends the iteration, unless the tolerance asks for less. */
-const NEWTON_TOLERANCE = 1e-9;
+/**
+ * A full pass whose update is below this multiple of the tolerance ends the iteration: it has
+ * linearised at the orbit, and its update leaves the square of itself.
+ */
+const LINEARISED_WITHIN = 10;
 /** Rounding floor of an update. */
 const ROUNDING = 2e-13;
 /** Refinements of the mesh before giving up. */
@@ -45,6 +46,8 @@ const ATTEMPT_SPACING = 1.6;
 const TRANSIENT_STEPS = 80_000;
 /** Deflection along the unstable mode from an equilibrium, in units of the scale. */
 const DEFLECTION = 0.1;
+/** Most orbits an extrapolation goes through. */
+const EXTRAPOLATED = 4;
 /** Steps per period of the fastest unstable mode at the start of a transient. */
 const STEPS_PER_MODE = 36;
 /** A second multiplier above 1 by more than this is unstable. */
@@ -364,7 +367,7 @@ class Search {
   readonly #coordinates: ChargeCoordinates;
   readonly #settings: Settings;
   #map: PeriodMap | undefined;
-  #stencil: { mesh: Float64Array; weights: Float64Array } | undefined;
+  readonly #rule: DefectRule;
   #passes = 0;
   #factorizations = 0;
   transientSteps = 0;
@@ -373,13 +376,12 @@ class Search {
   constructor(coordinates: ChargeCoordinates, settings: Settings) {
     this.#coordinates = coordinates;
     this.#settings = settings;
+    this.#rule = defectRule(settings.method);
   }
 
-  /** Takes over a neighbour's work arrays and the weights of its mesh. */
-  adopt(neighbour: Orbit): void {
-    const { map, stencil, path, method } = neighbour.discrete;
-    if (method === this.#settings.method) this.#map = map;
-    this.#stencil = { mesh: path.mesh, weights: stencil };
+  /** Takes over a neighbour's work arrays. */
+  adopt({ discrete }: Orbit): void {
+    if (discrete.method === this.#settings.method) this.#map = discrete.map;
   }
 
   work(): Work {
@@ -435,7 +437,7 @@ class Search {
       }
       const mesh = spreadMesh(path.mesh, orbit.discrete.nodes.localError, {
         steps: Math.max(next, FEWEST_STEPS),
-        order: 2 * method.stages + 1,
+        order: 2 * method.stages + 2,
       });
       path = moveToMesh(orbit.discrete.path, mesh, { method, n, r });
     }
@@ -450,10 +452,11 @@ class Search {
     }
     const map = this.#map;
     map.load(begin, this.#coordinates);
-    const target = Math.max(ROUNDING, Math.min(NEWTON_TOLERANCE, 1e-2 * tolerance));
+    const target = Math.max(ROUNDING, LINEARISED_WITHIN * tolerance);
     this.history = [];
     let reuse = false;
-    let previous = Infinity;
+    let smallest = Infinity;
+    let stalled = 0;
     let residual = Infinity;
     for (let pass = 0; pass < NEWTON_PASSES; pass++) {
       const before = map.factorizations;
@@ -471,10 +474,12 @@ class Search {
       this.history.push(size);
       if (!(size < Infinity && map.period > 0)) break;
       if (!reuse && size < target) return this.#finish(map, residual);
-      if (reuse && size < target) reuse = false;
-      else if (reuse) reuse = size < REUSE_CONTRACTION * previous;
-      else reuse = size < REUSE_BELOW;
-      previous = size;
+      stalled = size < smallest ? 0 : stalled + 1;
+      if (stalled >= STALLED_PASSES) break;
+      smallest = Math.min(smallest, size);
+      // What a full pass leaves is about its update squared; where that is still too much and one
+      // pass with the same factors mends it, the factors are reused.
+      reuse = !reuse && size ** 2 > target && size ** 3 < target;
     }
     return failure("no convergence", "Newton did not converge on a closed path", {
       history: this.history,
@@ -487,14 +492,11 @@ class Search {
     const coordinates = this.#coordinates;
     const adjoint = map.adjoint();
     const path = map.copy();
-    if (!this.#stencil || !sameMesh(this.#stencil.mesh, path.mesh)) {
-      this.#stencil = { mesh: path.mesh, weights: stencilWeights(path.mesh) };
-    }
-    const stencil = this.#stencil.weights;
     const nodes = nodeValues(coordinates, path, {
       adjoint,
-      weights: stencil,
       method,
+      rule: this.#rule,
+      stageFlow: map.stageCurrents,
     });
     if (!nodes) {
       return failure("no convergence", "no state at a mesh point satisfies the equations", {
@@ -506,7 +508,7 @@ class Search {
       residual,
       estimate: { period: nodes.periodError, sensitivity: nodes.sensitivityError },
       work: this.work(),
-      discrete: { coordinates, method, path, adjoint, nodes, map, stencil },
+      discrete: { coordinates, method, path, adjoint, nodes, map },
       stepMaps: map.stepMaps.slice(),
     });
   }
@@ -517,7 +519,7 @@ function sameMesh(a: Float64Array, b: Float64Array): boolean {
 }
 
 /**
- * A guess of the orbit at a parameter value from up to three orbits at other values on the same mesh,
+ * A guess of the orbit at a parameter value from up to four orbits at other values on the same mesh,
  * by polynomial extrapolation; fewer are used where meshes differ.
  *
  * @param orbits nearest last, at least one
@@ -534,7 +536,7 @@ export function extrapolateOrbits(
     );
   }
   const usable: { path: Path; value: number }[] = [];
-  for (let k = orbits.length - 1; k >= 0 && usable.length < 3; k--) {
+  for (let k = orbits.length - 1; k >= 0 && usable.length < EXTRAPOLATED; k--) {
     const { path } = orbits[k]!.discrete;
     if (!sameMesh(path.mesh, neighbour.discrete.path.mesh)) break;
     usable.push({ path, value: at.values[k]! });

@@ -62,7 +62,12 @@ export function evaluateStages(
   }
 }
 
-/** Writes the stage matrix of the step whose stages begin at `first` into `J[JAt...]`. */
+/**
+ * Writes the stage matrix of the step whose stages begin at `first` into `J[JAt...]`.
+ *
+ * Its rows and columns go through the stages of one unknown before the next: unknowns that come first
+ * in the system and meet few others, such as winding currents, are then eliminated cheaply.
+ */
 export function assembleMatrix(
   coordinates: ChargeCoordinates,
   method: GaussMethod,
@@ -72,37 +77,29 @@ export function assembleMatrix(
   const { n, r } = coordinates;
   const s = method.stages;
   const size = s * n;
-  for (let i = 0; i < s; i++) {
-    for (let j = 0; j < s; j++) {
-      const weight = h * method.matrix[i * s + j]!;
-      const G = (first + j) * n * n;
-      for (let row = 0; row < r; row++) {
-        const out = JAt + (i * n + row) * size + j * n;
-        const from = G + row * n;
-        for (let k = 0; k < n; k++) J[out + k] = weight * values.G[from + k]!;
-      }
-      for (let row = r; row < n; row++) {
-        const out = JAt + (i * n + row) * size + j * n;
+  for (let row = 0; row < n; row++) {
+    for (let i = 0; i < s; i++) {
+      const out = JAt + (row * s + i) * size;
+      const own = (first + i) * r * n + row * n;
+      for (let j = 0; j < s; j++) {
+        const from = (first + j) * n * n + row * n;
+        if (row >= r) {
+          for (let k = 0; k < n; k++) J[out + k * s + j] = i === j ? values.G[from + k]! : 0;
+          continue;
+        }
+        const weight = h * method.matrix[i * s + j]!;
+        for (let k = 0; k < n; k++) J[out + k * s + j] = weight * values.G[from + k]!;
         if (i === j) {
-          const from = G + row * n;
-          for (let k = 0; k < n; k++) J[out + k] = values.G[from + k]!;
-        } else {
-          for (let k = 0; k < n; k++) J[out + k] = 0;
+          for (let k = 0; k < n; k++) J[out + k * s + j]! += values.C[own + k]!;
         }
       }
-    }
-    const C = (first + i) * r * n;
-    for (let row = 0; row < r; row++) {
-      const out = JAt + (i * n + row) * size + i * n;
-      const from = C + row * n;
-      for (let k = 0; k < n; k++) J[out + k]! += values.C[from + k]!;
     }
   }
 }
 
 /**
- * Writes the negative residual of the stage equations into `out[outAt...]` with the given stride and
- * returns its largest entry.
+ * Writes the negative residual of the stage equations, in the order of the stage matrix, into
+ * `out[outAt...]` with the given stride and returns its largest entry.
  */
 export function stageResidual(
   coordinates: ChargeCoordinates,
@@ -132,7 +129,7 @@ export function stageResidual(
       } else {
         value = -values.f[(first + i) * n + row]!;
       }
-      out[outAt + (i * n + row) * stride] = value;
+      out[outAt + (row * s + i) * stride] = value;
       const size = Math.abs(value);
       if (!(size <= largest)) largest = size;
     }
@@ -171,7 +168,9 @@ export class GaussStepper {
    */
   solve(y: Float64Array, { h, tolerance }: { h: number; tolerance: number }): boolean {
     const { coordinates, method, stages, values } = this;
-    const size = stages.length;
+    const { n } = coordinates;
+    const s = method.stages;
+    const size = s * n;
     let fresh = false;
     let previous = Infinity;
     for (let iteration = 0; iteration < STEP_ITERATIONS; iteration++) {
@@ -196,7 +195,9 @@ export class GaussStepper {
       for (let k = 0; k < size; k++) change = Math.max(change, Math.abs(this.#change[k]!));
       if (!(change < Infinity)) return false;
       const damping = change > STEP_BOUND ? STEP_BOUND / change : 1;
-      for (let k = 0; k < size; k++) stages[k]! += damping * this.#change[k]!;
+      for (let k = 0; k < n; k++) {
+        for (let i = 0; i < s; i++) stages[i * n + k]! += damping * this.#change[k * s + i]!;
+      }
       if (change < tolerance) {
         evaluateStages(coordinates, stages, values, { first: 0, count: method.stages });
         return true;
@@ -236,12 +237,12 @@ export class GaussStepper {
       for (let k = 0; k < n; k++) {
         let value = 0;
         for (let row = 0; row < r; row++) value += values.G[(j * n + row) * n + k]! * w[row]!;
-        this.#change[j * n + k] = -h * method.weights[j]! * value;
+        this.#change[k * s + j] = -h * method.weights[j]! * value;
       }
     }
     solveTransposed(this.#J, this.#pivots, this.#change, { n: s * n });
     for (let row = 0; row < r; row++) {
-      for (let i = 0; i < s; i++) w[row]! += this.#change[i * n + row]!;
+      for (let i = 0; i < s; i++) w[row]! += this.#change[row * s + i]!;
     }
     return true;
   }

@@ -84,8 +84,6 @@ export class Orbit {
     readonly nodes: NodeValues;
     /** Work arrays, reused by the orbits continued from this one. */
     readonly map: PeriodMap;
-    /** Quadrature weights of the error estimate, which belong to the mesh. */
-    readonly stencil: Float64Array;
   };
   readonly #stepMaps: Float64Array;
   #multipliers: readonly Multiplier[] | undefined;

@@ -139,6 +139,11 @@ export class PeriodMap {
     };
   }
 
+  /** Scaled currents at the stages of the present path, shape (steps, s, n). */
+  get stageCurrents(): Float64Array {
+    return this.#values.f;
+  }
+
   #stepLength(step: number): number {
     return this.period * (this.mesh[step + 1]! - this.mesh[step]!);
   }
@@ -168,7 +173,7 @@ export class PeriodMap {
       const columns = this.#columns;
       for (let i = 0; i < s; i++) {
         for (let row = 0; row < n; row++) {
-          const at = columnsAt + (i * n + row) * width;
+          const at = columnsAt + (row * s + i) * width;
           for (let c = 0; c < r; c++) columns[at + c] = c === row ? 1 : 0;
           let slope = 0;
           if (row < r) {
@@ -246,31 +251,33 @@ export class PeriodMap {
 
   /** d (charges at the end) by the stages, the step map, the slope with the period and the gap. */
   #writeStepMap(step: number, h: number): number {
-    const { method } = this;
     const { n, r } = this.coordinates;
-    const s = method.stages;
+    const { weights, stages: s } = this.method;
+    const { f, G } = this.#values;
+    const output = this.#output;
+    const columns = this.#columns;
+    const stepMaps = this.stepMaps;
     const size = s * n;
     const width = r + 2;
-    const values = this.#values;
     const columnsAt = step * size * width;
     for (let row = 0; row < r; row++) {
       const outputAt = (step * r + row) * size;
+      const mapAt = (step * r + row) * r;
+      for (let c = 0; c < r; c++) stepMaps[mapAt + c] = c === row ? 1 : 0;
       let slope = 0;
       for (let j = 0; j < s; j++) {
-        const weight = -h * method.weights[j]!;
-        const G = ((step * s + j) * n + row) * n;
-        for (let k = 0; k < n; k++) this.#output[outputAt + j * n + k] = weight * values.G[G + k]!;
-        slope += weight * values.f[(step * s + j) * n + row]!;
-      }
-      const mapAt = (step * r + row) * r;
-      for (let c = 0; c < r; c++) this.stepMaps[mapAt + c] = c === row ? 1 : 0;
-      slope /= this.period;
-      for (let k = 0; k < size; k++) {
-        const weight = this.#output[outputAt + k]!;
-        if (weight === 0) continue;
-        const from = columnsAt + k * width;
-        for (let c = 0; c < r; c++) this.stepMaps[mapAt + c]! += weight * this.#columns[from + c]!;
-        slope += weight * this.#columns[from + r]!;
+        const weight = -h * weights[j]!;
+        const stage = step * s + j;
+        slope += weight * f[stage * n + row]! / this.period;
+        const GAt = (stage * n + row) * n;
+        for (let k = 0; k < n; k++) {
+          const own = weight * G[GAt + k]!;
+          output[outputAt + k * s + j] = own;
+          if (own === 0) continue;
+          const from = columnsAt + (k * s + j) * width;
+          for (let c = 0; c < r; c++) stepMaps[mapAt + c]! += own * columns[from + c]!;
+          slope += own * columns[from + r]!;
+        }
       }
       this.#periodSlope[step * r + row] = slope;
     }
@@ -278,23 +285,22 @@ export class PeriodMap {
   }
 
   #writeGap(step: number, h: number): number {
-    const { method } = this;
     const { n, r } = this.coordinates;
-    const s = method.stages;
+    const { weights, stages: s } = this.method;
+    const { f } = this.#values;
+    const output = this.#output;
+    const columns = this.#columns;
+    const charges = this.charges;
     const size = s * n;
     const width = r + 2;
     const columnsAt = step * size * width + r + 1;
     let largest = 0;
     for (let row = 0; row < r; row++) {
-      let gap = this.charges[step * r + row]! - this.charges[(step + 1) * r + row]!;
-      for (let j = 0; j < s; j++) {
-        gap -= h * method.weights[j]! * this.#values.f[(step * s + j) * n + row]!;
-      }
+      let gap = charges[step * r + row]! - charges[(step + 1) * r + row]!;
+      for (let j = 0; j < s; j++) gap -= h * weights[j]! * f[(step * s + j) * n + row]!;
       if (!(Math.abs(gap) <= largest)) largest = Math.abs(gap);
       const outputAt = (step * r + row) * size;
-      for (let k = 0; k < size; k++) {
-        gap += this.#output[outputAt + k]! * this.#columns[columnsAt + k * width]!;
-      }
+      for (let k = 0; k < size; k++) gap += output[outputAt + k]! * columns[columnsAt + k * width]!;
       this.#gap[step * r + row] = gap;
     }
     return largest;
@@ -371,9 +377,7 @@ export class PeriodMap {
    */
   update(bound: number): Update {
     const { steps } = this;
-    const { n, r } = this.coordinates;
-    const size = this.method.stages * n;
-    const width = r + 2;
+    const { r } = this.coordinates;
     const border = this.#border;
     for (let i = 0; i < r; i++) {
       border[i] = this.charges[i]! - this.charges[steps * r + i]! - this.#endGap[i]!;
@@ -382,48 +386,63 @@ export class PeriodMap {
     solve(this.#bordered, this.#borderedPivots, border, { n: r + 1 });
     const period = border[r]! * this.#periodUnit;
     const relative = Math.abs(period) / this.period;
-    const change = this.#rowScratch;
-    // First pass: the size of the update. Second pass: the update, cut where it is too long.
-    let state = 0;
-    let cut = 0;
-    for (let pass = 0; pass < 2; pass++) {
-      if (pass === 1) {
-        const longest = Math.max(state, relative);
-        cut = longest > bound ? bound / longest : 1;
-        if (!(cut > 0)) return { state: Infinity, period: Infinity };
-      }
-      for (let i = 0; i < r; i++) change[i] = border[i]!;
-      for (let step = 0; step < steps; step++) {
-        const columnsAt = step * size * width;
-        for (let k = 0; k < size; k++) {
-          const at = columnsAt + k * width;
-          let value = this.#columns[at + r + 1]! +
-            this.#columns[at + r]! * period;
-          for (let c = 0; c < r; c++) value += this.#columns[at + c]! * change[c]!;
-          if (pass === 0) {
-            if (!(Math.abs(value) <= state)) state = Math.abs(value);
-          } else {
-            this.stages[step * size + k]! += cut * value;
-          }
-        }
-        if (pass === 1) {
-          for (let i = 0; i < r; i++) this.charges[step * r + i]! += cut * change[i]!;
-        }
-        for (let i = 0; i < r; i++) {
-          const mapAt = (step * r + i) * r;
-          let value = this.#gap[step * r + i]! +
-            this.#periodSlope[step * r + i]! * period;
-          for (let c = 0; c < r; c++) value += this.stepMaps[mapAt + c]! * change[c]!;
-          change[r + i] = value;
-        }
-        for (let i = 0; i < r; i++) change[i] = change[r + i]!;
-      }
-      if (pass === 1) {
-        for (let i = 0; i < r; i++) this.charges[steps * r + i]! += cut * change[i]!;
-      }
-    }
+    // First round: the size of the update. Second round: the update, cut where it is too long.
+    const state = this.#sweepUpdate(period, 0);
+    const longest = Math.max(state, relative);
+    const cut = longest > bound ? bound / longest : 1;
+    if (!(cut > 0)) return { state: Infinity, period: Infinity };
+    this.#sweepUpdate(period, cut);
     this.period += cut * period;
     return { state, period: relative };
+  }
+
+  /**
+   * Carries the update of the first charges and of the period through the steps and adds `cut` times it
+   * to the path; the stage currents follow to first order.
+   *
+   * @returns largest change of a scaled stage state, before the cut
+   */
+  #sweepUpdate(period: number, cut: number): number {
+    const { steps, stages, charges, stepMaps } = this;
+    const { n, r } = this.coordinates;
+    const s = this.method.stages;
+    const { f, G } = this.#values;
+    const columns = this.#columns;
+    const change = this.#rowScratch;
+    const work = this.#stageWork;
+    const size = s * n;
+    const width = r + 2;
+    let largest = 0;
+    for (let i = 0; i < r; i++) change[i] = this.#border[i]!;
+    for (let step = 0; step < steps; step++) {
+      for (let k = 0; k < size; k++) {
+        const at = (step * size + k) * width;
+        let value = columns[at + r + 1]! + columns[at + r]! * period;
+        for (let c = 0; c < r; c++) value += columns[at + c]! * change[c]!;
+        work[k] = value;
+        if (!(Math.abs(value) <= largest)) largest = Math.abs(value);
+      }
+      if (cut > 0) {
+        for (let j = 0; j < s; j++) {
+          const stage = (step * s + j) * n;
+          for (let k = 0; k < n; k++) stages[stage + k]! += cut * work[k * s + j]!;
+          for (let row = 0; row < n; row++) {
+            const GAt = (stage + row) * n;
+            for (let k = 0; k < n; k++) f[stage + row]! += cut * G[GAt + k]! * work[k * s + j]!;
+          }
+        }
+        for (let i = 0; i < r; i++) charges[step * r + i]! += cut * change[i]!;
+      }
+      for (let i = 0; i < r; i++) {
+        const mapAt = (step * r + i) * r;
+        let value = this.#gap[step * r + i]! + this.#periodSlope[step * r + i]! * period;
+        for (let c = 0; c < r; c++) value += stepMaps[mapAt + c]! * change[c]!;
+        change[r + i] = value;
+      }
+      for (let i = 0; i < r; i++) change[i] = change[r + i]!;
+    }
+    if (cut > 0) { for (let i = 0; i < r; i++) charges[steps * r + i]! += cut * change[i]!; }
+    return largest;
   }
 
   /**
@@ -480,7 +499,7 @@ export class PeriodMap {
       });
       for (let row = 0; row < r; row++) {
         let value = nodes[end + row]!;
-        for (let i = 0; i < s; i++) value += work[i * n + row]!;
+        for (let i = 0; i < s; i++) value += work[row * s + i]!;
         nodes[step * r + row] = value;
       }
       for (let j = 0; j < s; j++) {
@@ -488,13 +507,13 @@ export class PeriodMap {
         for (let row = 0; row < r; row++) {
           let value = nodes[end + row]!;
           for (let i = 0; i < s; i++) {
-            value += method.matrix[i * s + j]! / method.weights[j]! * work[i * n + row]!;
+            value += method.matrix[i * s + j]! / method.weights[j]! * work[row * s + i]!;
           }
           stages[at + row] = value;
-          stageWeights[(step * s + j) * r + row] = work[j * n + row]!;
+          stageWeights[(step * s + j) * r + row] = work[row * s + j]!;
         }
         for (let row = r; row < n; row++) {
-          stages[at + row] = work[j * n + row]! / (h * method.weights[j]!);
+          stages[at + row] = work[row * s + j]! / (h * method.weights[j]!);
         }
       }
     }

@@ -32,6 +32,8 @@ const DYING = 1e-3;
 /** Consecutive steps without motion after which the system is at rest. */
 const REST_STEPS = 40;
 const REST_MOTION = 1e-9;
+/** A state this many times its scale is on its way to infinity. */
+const RUNAWAY = 1e8;
 /** Crossings far from the anchor before it moves on; one more at each move, up to the limit. */
 const MOST_CROSSINGS = 40;
 /** Steps without any crossing after which the anchor moves on. */
@@ -263,10 +265,19 @@ export class Transient {
       this.#h = Math.min(this.#longestStep, h * ratio);
       if (miss > REPEAT * STEP_TARGET && this.#last && attempt < REPEATS) continue;
       stepper.advance(this.#y, { h, end });
+      const before = this.#last?.stages.subarray(lastStage) ?? this.#start;
       this.#last = { h, charges: this.#y, stages: stepper.stages.slice() };
       this.#cycle.push(this.#last);
+      // Stage states, not charges: behind steps longer than every time constant the charges only
+      // change sign, while the stages lie at the equilibrium.
       let motion = 0;
-      for (let i = 0; i < r; i++) motion = Math.max(motion, Math.abs(end[i]! - this.#y[i]!));
+      let size = 0;
+      for (let k = 0; k < stepper.stages.length; k++) {
+        const value = stepper.stages[k]!;
+        motion = Math.max(motion, Math.abs(value - before[k % n]!));
+        size = Math.max(size, Math.abs(value));
+      }
+      if (!(size < RUNAWAY)) return "the motion grows without bound";
       this.#resting = motion < REST_MOTION ? this.#resting + 1 : 0;
       this.#chargeRange.widen(end);
       this.#stateRange.widen(stepper.stages, lastStage);

@@ -1,11 +1,11 @@
-import { orbitOf, tanhOscillator, unitSource, vanDerPol } from "./orbit/_systems.ts";
-import { phaseDiffusion } from "../../lib/orbit/phase_diffusion.ts";
-const row={quality:2,gain:3};
-const {quality,gain}=row;
-const src=[{label:"",device:"",color:"white" as const,inject(_x:Float64Array,i:Float64Array){i[0]=Math.sqrt(1/quality);i[1]=0}},{label:"",device:"",color:"white" as const,inject(x:Float64Array,i:Float64Array){i[0]=Math.sqrt(gain/quality)/Math.cosh(x[0]!);i[1]=0}}];
-const ex=tanhOscillator(row);
-for(const o of [{}, { tolerance: 1e-13 },{tolerance:1e-12}, { tolerance: 1e-13, steps: 40, stages: 2 },{ tolerance: 1e-13, steps: 40, stages: 3 },{ tolerance: 1e-13, steps: 24, stages: 4 }]){
- const orbit=orbitOf(ex.system,{start:ex.start,...o});
- const {sources:[a,b]}=phaseDiffusion(orbit,src);
- console.log(o,orbit.steps,b!.diffusion/a!.diffusion-1,orbit.residual,orbit.discrete.adjoint.closure,orbit.work, Math.hypot(...orbit.multipliers.map(m=>m.re-1)),orbit.multipliers[0]);
-}
+import { findOrbit } from "../../lib/orbit/find_orbit.ts";
+import { Transient } from "../../lib/orbit/transient.ts";
+import { ChargeCoordinates } from "../../lib/orbit/charge_coordinates.ts";
+import { gaussMethod } from "../../lib/numeric/gauss.ts";
+import { stuartLandau } from "./orbit/_systems.ts";
+const {system}=stuartLandau({ growth: -0.3, frequency: 2, damping: 1, shear: 0 });
+const start=Float64Array.of(1,0);
+const c=new ChargeCoordinates(system,start);
+const t=new Transient(c,gaussMethod(3),{start,charges:start.slice(),firstStep:1e-2/2,longestStep:Infinity});
+for(let i=0;i<20;i++){const o=t.nextCycle(80000);console.log(o.status, o.status==="closed"?[o.path.mesh.length,o.size,o.growth,o.path.period, o.path.mesh[1]]:o);if(o.status!=="closed")break}
+try{console.log(findOrbit(system,{start}))}catch(e){console.log(e)}
