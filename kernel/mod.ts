@@ -19,6 +19,28 @@ export {
 export type { FilledField } from "./sheet/fill_sheet.ts";
 export type { Revision, RevisionField, Waiver } from "./sheet/revision.ts";
 export { type Given, sheet, type SheetOptions } from "./sheet/sheet.ts";
+export {
+  biasTable,
+  type ConditionStresses,
+  cornersTable,
+  type CsvOptions,
+  handTable,
+  startupTable,
+  type StartupTableOptions,
+  stressRows,
+} from "./show/bias_tables.ts";
+export {
+  amplitudeChart,
+  type AmplitudeChartOptions,
+  type BiasMarks,
+  type HandCurve,
+  noiseChart,
+  type NoiseChartOptions,
+  noiseSharesChart,
+  tankWaveform,
+  type TankWaveformOptions,
+} from "./show/bias_views.ts";
+export { cornerVerdict, type CornerVerdictOptions } from "./show/corner_verdict.ts";
 export type {
   ChartAxis,
   ChartBand,
@@ -29,6 +51,7 @@ export type {
   DrawingText,
 } from "./show/chart_parts.ts";
 export { chart, type ChartOptions } from "./show/chart.ts";
+export { conditionText } from "./show/condition_text.ts";
 export { figure } from "./show/figure.ts";
 export { formula, type FormulaOptions } from "./show/formula.ts";
 export { type SeriesStyle, seriesStyle } from "./show/palette.ts";
@@ -43,10 +66,12 @@ export type {
 } from "./show/payload.ts";
 export { progress } from "./show/progress.ts";
 export { quantity, type QuantityOptions } from "./show/quantity.ts";
+export { schematic, type SchematicOptions } from "./show/schematic.ts";
 export { type Share, shareChart, type ShareChartOptions } from "./show/share_chart.ts";
 export { show } from "./show/show.ts";
 export { type MimeBundle, PayloadShowable, Showable } from "./show/showable.ts";
 export { stress } from "./show/stress.ts";
+export { stressVerdict, type StressVerdictOptions } from "./show/stress_verdict.ts";
 export { sweepChart, type SweepChartOptions } from "./show/sweep_chart.ts";
 export type { TableCell, TableColumn } from "./show/table_parts.ts";
 export { table, type TableOptions } from "./show/table.ts";

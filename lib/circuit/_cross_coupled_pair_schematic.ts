@@ -27,12 +27,12 @@ export interface PairSchematicValues {
 }
 
 /** Columns: the reference branch, the loads, the two outputs and the line of symmetry between them. */
-const REFERENCE = 5;
-const LOAD_PLUS = 9;
-const PLUS = 12;
-const MIDDLE = 17;
-const MINUS = 22;
-const LOAD_MINUS = 25;
+const REFERENCE = 6;
+const LOAD_PLUS = 10;
+const PLUS = 13;
+const MIDDLE = 18;
+const MINUS = 23;
+const LOAD_MINUS = 26;
 /** Row of the ground symbols of the tail, its mirror and what hangs beside them. */
 const FLOOR = 20;
 
@@ -63,7 +63,7 @@ export function pairSchematic(values: PairSchematicValues): Schematic {
   ];
   const width = (value: number) => ({ value: { value, unit: "m" } });
   return {
-    width: 29,
+    width: 31,
     height: 22,
     symbols: [
       ...branches.flatMap(({ symbols }) => symbols),
@@ -134,11 +134,11 @@ function tankBranch({ inductance, resistance, tankCapacitance }: PairSchematicVa
       {
         kind: "inductor",
         name: "coil, both halves",
-        at: [PLUS + 2.5, 3],
+        at: [PLUS + 3, 3],
         turn: 1,
         value: { value: inductance, unit: "H" },
       },
-      { kind: "inductor", name: "", at: [MINUS - 2.5, 3], turn: 1 },
+      { kind: "inductor", name: "", at: [MINUS - 3, 3], turn: 1 },
       {
         kind: "resistor",
         name: "tank loss",
@@ -156,9 +156,8 @@ function tankBranch({ inductance, resistance, tankCapacitance }: PairSchematicVa
     ],
     wires: [
       [[MIDDLE, 1], [MIDDLE, 3]],
-      [[PLUS, 3], [PLUS + 0.5, 3]],
-      [[PLUS + 4.5, 3], [MINUS - 4.5, 3]],
-      [[MINUS - 0.5, 3], [MINUS, 3]],
+      [[PLUS, 3], [PLUS + 1, 3]],
+      [[MINUS - 1, 3], [MINUS, 3]],
       ...[5, 7].flatMap((row): Point[][] => [
         [[PLUS, row], [MIDDLE - 1, row]],
         [[MIDDLE + 1, row], [MINUS, row]],

@@ -4,6 +4,8 @@ import { type CircuitElement, GROUND } from "./element.ts";
  * Refuses values outside their range and circuits that have no defined answer.
  *
  * @throws RangeError with the element or the nodes at fault
+ *
+ * @internal
  */
 export function refuseImpossible(elements: readonly CircuitElement[]): void {
   const names = new Set<string>();

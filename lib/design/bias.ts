@@ -5,7 +5,8 @@
  */
 import type { BuiltOscillator, Condition, Topology } from "../circuit/topology.ts";
 import type { TechnologyCard } from "../device/technology_card.ts";
-import { extrapolateOrbits, findOrbit } from "../orbit/find_orbit.ts";
+import { findOrbit } from "../orbit/find_orbit.ts";
+import { extrapolateOrbits } from "../orbit/orbit_guess.ts";
 import { Orbit } from "../orbit/orbit.ts";
 import { type OperatingFigures, operatingFigures } from "./operating_figures.ts";
 import { KNEE_EXPONENT, kneeCurrent, localExponents, type Regime, regimeOf } from "./regime.ts";
@@ -288,7 +289,7 @@ export function cornerConditions(
       readonly highest: number;
     };
   },
-): Condition[] {
+): [Condition, ...Condition[]] {
   const { lowest, nominal, highest } = card.temperature;
   const ends = (["slow", "typical", "fast"] as const).flatMap((corner) =>
     [lowest, highest].flatMap((temperature) =>

@@ -41,7 +41,7 @@ export interface NoiseFactorParts {
  */
 export function pairNoiseFactor(values: PairNoiseValues): NoiseFactorParts {
   for (const [name, value] of Object.entries(values)) {
-    if (!(value > 0)) {
+    if (!(value > 0 && value < Infinity)) {
       throw new RangeError(`Cannot compute the noise factor: ${name} must be > 0, got ${value}`);
     }
   }

@@ -5,11 +5,21 @@
  */
 
 function positive(value: number, what: string, unit: string): void {
-  if (!(value > 0 && value < Infinity)) {
-    throw new RangeError(
-      `Cannot compute phase noise: ${what} must be > 0 ${unit}, got ${value} ${unit}`,
-    );
-  }
+  if (!(value > 0 && value < Infinity)) refuse("> 0", { value, what, unit });
+}
+
+function finite(value: number, what: string, unit: string): void {
+  if (!Number.isFinite(value)) refuse("finite, in", { value, what, unit });
+}
+
+function refuse(
+  requirement: string,
+  { value, what, unit }: { value: number; what: string; unit: string },
+): never {
+  const space = unit === "" ? "" : " ";
+  throw new RangeError(
+    `Cannot compute phase noise: ${what} must be ${requirement}${space}${unit}, got ${value}${space}${unit}`,
+  );
 }
 
 /**
@@ -40,7 +50,7 @@ export function whitePhaseNoise(
  * @param frequency f0 [Hz]
  * @param offset f, may be zero or negative [Hz]
  * @returns power density relative to the carrier's power [1/Hz]; its integral over all offsets is one
- * @throws RangeError for a diffusion or frequency that is not positive
+ * @throws RangeError for a diffusion or frequency that is not positive, or an offset that is not finite
  * @see A. Demir, A. Mehrotra, J. Roychowdhury, IEEE Trans. Circuits Syst. I 47 (2000) 655
  */
 export function carrierLine(
@@ -49,6 +59,7 @@ export function carrierLine(
 ): number {
   positive(diffusion, "diffusion", "s");
   positive(frequency, "frequency", "Hz");
+  finite(offset, "offset", "Hz");
   const width = frequency ** 2 * diffusion;
   return width / ((Math.PI * width) ** 2 + offset ** 2);
 }
@@ -61,7 +72,7 @@ export function carrierLine(
  * @param offset f [Hz]
  * @param power P [W]
  * @returns [dBc/Hz], larger is better
- * @throws RangeError for values that are not positive
+ * @throws RangeError for a phase noise that is not finite and other values that are not positive
  * @see P. Kinget, in Analog Circuit Design (1999) 353 (from memory)
  */
 export function figureOfMerit(
@@ -72,6 +83,7 @@ export function figureOfMerit(
     readonly power: number;
   },
 ): number {
+  finite(phaseNoise, "phase noise", "dBc/Hz");
   positive(frequency, "frequency", "Hz");
   positive(offset, "offset", "Hz");
   positive(power, "power", "W");

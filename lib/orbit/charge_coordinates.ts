@@ -25,6 +25,11 @@ const STATE_TOLERANCE = 1e-13;
 /** Longest change of a state, in units of the scale, in one iteration. */
 const STATE_STEP = 2;
 
+/**
+ * A system in the coordinates of its independent charges, everything scaled to about one.
+ *
+ * @internal
+ */
 export class ChargeCoordinates {
   readonly system: OscillatorSystem;
   /** Number of unknowns. */

@@ -35,6 +35,7 @@ export interface Equilibrium {
   readonly iterations: number;
 }
 
+/** Why no equilibrium was found. */
 export interface NoEquilibrium {
   readonly status: "no equilibrium";
   readonly reason: string;
@@ -42,6 +43,7 @@ export interface NoEquilibrium {
   readonly iterations: number;
 }
 
+/** Options of {@linkcode findEquilibrium}. */
 export interface EquilibriumOptions {
   /** Where to begin, shape (n,). @default zeros */
   readonly guess?: Float64Array;

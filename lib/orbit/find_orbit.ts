@@ -1,42 +1,20 @@
 import { type GaussMethod, gaussMethod } from "../numeric/gauss.ts";
 import { ChargeCoordinates } from "./charge_coordinates.ts";
 import type { Equilibrium, NoEquilibrium } from "./equilibrium.ts";
-import { moveToMesh, spreadMesh } from "./mesh.ts";
-import { type DefectRule, defectRule, nodeValues, rangeOf } from "./node_values.ts";
-import { Orbit, type OrbitFailure, type OrbitResult, type Work } from "./orbit.ts";
-import { type Path, PeriodMap } from "./period_map.ts";
+import { rangeOf } from "./node_values.ts";
+import { Orbit, type OrbitFailure, type OrbitResult } from "./orbit.ts";
+import { orbitFailure } from "./orbit_failure.ts";
+import type { OrbitGuess } from "./orbit_guess.ts";
+import { FEWEST_STEPS, OrbitSearch, type SearchSettings } from "./orbit_search.ts";
+import { stableOrbit } from "./orbit_stability.ts";
+import type { Path } from "./period_map.ts";
 import type { OscillatorSystem } from "./system.ts";
 import { Transient } from "./transient.ts";
 
 /** Relative error of the period asked for unless the caller says otherwise. */
 const DEFAULT_TOLERANCE = 1e-8;
-/** The sensitivity may be this many times less accurate than the period. */
-const SENSITIVITY_ALLOWANCE = 100;
 const SMALLEST_TOLERANCE = 1e-14;
 const DEFAULT_STAGES = 3;
-const FEWEST_STEPS = 16;
-const MOST_STEPS = 6000;
-const NEWTON_PASSES = 24;
-/** Full passes in a row whose update did not shrink before giving up. */
-const STALLED_PASSES = 5;
-/** Longest Newton update of a scaled state. */
-const NEWTON_BOUND = 0.5;
-/**
- * A full pass whose update is below this multiple of the tolerance ends the iteration: it has
- * linearised at the orbit, and its update leaves the square of itself.
- */
-const LINEARISED_WITHIN = 10;
-/** Rounding floor of an update. */
-const ROUNDING = 2e-13;
-/** Refinements of the mesh before giving up. */
-const MESH_ROUNDS = 8;
-/** Aim below the tolerance by this factor when choosing the number of steps. */
-const MESH_MARGIN = 0.3;
-const LARGEST_REFINEMENT = 3;
-/** A mesh whose estimate is this part of the tolerance is coarsened. */
-const TOO_GOOD = 0.03;
-/** The mesh of a neighbour is kept longer: a new mesh spoils the extrapolation. */
-const TOO_GOOD_KEPT = 1e-3;
 /** An orbit must keep this part of the motion it was guessed from; less is a shrunken guess. */
 const KEPT_SIZE = 0.2;
 /** Growth per cycle below which a cycle is worth a Newton attempt. */
@@ -46,23 +24,8 @@ const ATTEMPT_SPACING = 1.6;
 const TRANSIENT_STEPS = 80_000;
 /** Deflection along the unstable mode from an equilibrium, in units of the scale. */
 const DEFLECTION = 0.1;
-/** Most orbits an extrapolation goes through. */
-const EXTRAPOLATED = 4;
 /** Steps per period of the fastest unstable mode at the start of a transient. */
 const STEPS_PER_MODE = 36;
-/** A second multiplier above 1 by more than this is unstable. */
-const STABILITY_MARGIN = 1e-6;
-/** Above this norm of the deflated monodromy's power the multipliers are computed. */
-const STABILITY_DOUBT = 0.999;
-const POWER_SQUARINGS = 10;
-
-/** A path near an orbit of a neighbouring system, from {@linkcode extrapolateOrbits}. */
-export interface OrbitGuess {
-  readonly status: "guess";
-  readonly path: Path;
-  /** The orbit whose mesh, coordinates and work arrays are taken over. */
-  readonly neighbour: Orbit;
-}
 
 export interface FindOrbitOptions {
   /** A state, shape (n,), an equilibrium, a neighbouring orbit or a guess made from several. */
@@ -103,21 +66,16 @@ export function findOrbit(system: OscillatorSystem, options: FindOrbitOptions): 
       return continueFrom(system, start.path, start.neighbour, settings);
     }
     if (start.status === "no equilibrium") {
-      return failure("no equilibrium", `there is no equilibrium to start from: ${start.reason}`);
+      return orbitFailure(
+        "no equilibrium",
+        `there is no equilibrium to start from: ${start.reason}`,
+      );
     }
   }
   return fromTransient(system, start, settings);
 }
 
-interface Settings {
-  readonly method: GaussMethod;
-  readonly tolerance: number;
-  readonly steps: number | undefined;
-  readonly period: number | undefined;
-  readonly transientSteps: number;
-}
-
-function check(system: OscillatorSystem, options: FindOrbitOptions): Settings {
+function check(system: OscillatorSystem, options: FindOrbitOptions): SearchSettings {
   const {
     start,
     period,
@@ -151,25 +109,11 @@ function check(system: OscillatorSystem, options: FindOrbitOptions): Settings {
   return { method: gaussMethod(stages), tolerance, steps, period, transientSteps };
 }
 
-function failure(
-  status: OrbitFailure["status"],
-  reason: string,
-  { history = [], work = NO_WORK, orbit }: {
-    history?: readonly number[];
-    work?: Work;
-    orbit?: Orbit;
-  } = {},
-): OrbitFailure {
-  return { status, reason, history, work, ...(orbit ? { orbit } : {}) };
-}
-
-const NO_WORK: Work = { evaluations: 0, factorizations: 0, passes: 0, transientSteps: 0 };
-
 function continueFrom(
   system: OscillatorSystem,
   path: Path,
   neighbour: Orbit,
-  settings: Settings,
+  settings: SearchSettings,
 ): OrbitResult {
   if (system.dimension !== neighbour.system.dimension) {
     throw new TypeError(
@@ -180,7 +124,7 @@ function continueFrom(
   const method = settings.method.stages === neighbour.discrete.method.stages
     ? neighbour.discrete.method
     : settings.method;
-  const search = new Search(coordinates, { ...settings, method });
+  const search = new OrbitSearch(coordinates, { ...settings, method });
   let begin = path;
   if (method !== neighbour.discrete.method) {
     // Another number of stages: take the neighbour's path over on the new method's points.
@@ -209,7 +153,7 @@ function restage(neighbour: Orbit, path: Path, method: GaussMethod): Path {
 function fromTransient(
   system: OscillatorSystem,
   start: Float64Array | Equilibrium,
-  settings: Settings,
+  settings: SearchSettings,
 ): OrbitResult {
   const state = start instanceof Float64Array ? start : start.state;
   const coordinates = new ChargeCoordinates(system, state);
@@ -220,7 +164,7 @@ function fromTransient(
   if (!(start instanceof Float64Array)) {
     const pole = start.poles[0]!;
     if (!(pole.re > 0)) {
-      return failure("settles", "the equilibrium is stable: a deflection from it dies out");
+      return orbitFailure("settles", "the equilibrium is stable: a deflection from it dies out");
     }
     let largest = 0;
     for (let j = 0; j < n; j++) {
@@ -236,13 +180,16 @@ function fromTransient(
   // The state must satisfy the algebraic rows: keep its charges and solve for the rest.
   const charges = chargesOf(coordinates, scaled);
   if (!coordinates.stateOf(charges, 0, scaled, 0)) {
-    return failure("no convergence", "no state with the start's charges satisfies the equations");
+    return orbitFailure(
+      "no convergence",
+      "no state with the start's charges satisfies the equations",
+    );
   }
   const { flow } = coordinates.reducedFlow(scaled);
   if (!(firstStep > 0)) {
     const rate = flow.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0);
     if (!(rate > 0)) {
-      return failure("settles", "the start is an equilibrium: nothing moves");
+      return orbitFailure("settles", "the start is an equilibrium: nothing moves");
     }
     firstStep = 1e-2 / rate;
   }
@@ -252,7 +199,7 @@ function fromTransient(
     firstStep,
     longestStep,
   });
-  const search = new Search(coordinates, settings);
+  const search = new OrbitSearch(coordinates, settings);
   let last: OrbitFailure | undefined;
   let steady = 0;
   let nextAttempt = 2;
@@ -260,14 +207,14 @@ function fromTransient(
     const cycle = transient.nextCycle(settings.transientSteps);
     search.transientSteps = transient.steps;
     if (cycle.status === "at rest") {
-      return failure("settles", "the motion dies out and settles at an equilibrium", {
+      return orbitFailure("settles", "the motion dies out and settles at an equilibrium", {
         work: search.work(),
       });
     }
     if (cycle.status === "lost") {
       return last
         ? { ...last, work: search.work() }
-        : failure("no convergence", cycle.reason, { work: search.work() });
+        : orbitFailure("no convergence", cycle.reason, { work: search.work() });
     }
     if (!(Math.abs(cycle.growth) < STEADY_GROWTH)) continue;
     steady++;
@@ -277,7 +224,7 @@ function fromTransient(
     if (result instanceof Orbit) {
       const size = Math.max(...rangeOf(result.discrete.path.charges, r, result.steps));
       if (!(size > KEPT_SIZE * cycle.size)) {
-        last = failure("no convergence", "Newton shrank the motion towards the equilibrium", {
+        last = orbitFailure("no convergence", "Newton shrank the motion towards the equilibrium", {
           history: search.history,
         });
         continue;
@@ -309,262 +256,4 @@ function chargesOf(coordinates: ChargeCoordinates, state: Float64Array): Float64
     0,
   );
   return charges;
-}
-
-/** Refuses an orbit whose second multiplier lies outside the unit circle. */
-function stableOrbit(orbit: Orbit): OrbitResult {
-  if (!(deflatedPowerNorm(orbit) > STABILITY_DOUBT)) return orbit;
-  const moduli = orbit.multipliers.map(({ re, im }) => Math.hypot(re, im));
-  // One multiplier is 1; take out the one nearest to it.
-  const unit = moduli.reduce(
-    (best, value, k) => Math.abs(value - 1) < Math.abs(moduli[best]! - 1) ? k : best,
-    0,
-  );
-  const second = Math.max(...moduli.filter((_, k) => k !== unit));
-  if (!(second > 1 + STABILITY_MARGIN)) return orbit;
-  return failure(
-    "unstable",
-    `the orbit is unstable: a second multiplier has modulus ${second.toPrecision(6)}`,
-    { work: orbit.work, orbit },
-  );
-}
-
-/** The 1024th root of the norm of the 1024th power of the monodromy without its unit direction. */
-function deflatedPowerNorm(orbit: Orbit): number {
-  const { coordinates, map, adjoint, path } = orbit.discrete;
-  const { r } = coordinates;
-  const { flow } = coordinates.reducedFlow(orbit.discrete.nodes.states.slice(0, coordinates.n));
-  let power = new Float64Array(r * r);
-  let unit = 0;
-  for (let i = 0; i < r; i++) unit += flow[i]! * adjoint.nodes[i]!;
-  for (let i = 0; i < r; i++) {
-    for (let j = 0; j < r; j++) {
-      power[i * r + j] = map.monodromy[i * r + j]! - flow[i]! * adjoint.nodes[j]! / unit;
-    }
-  }
-  let logNorm = 0;
-  for (let k = 0; k < POWER_SQUARINGS; k++) {
-    const next = new Float64Array(r * r);
-    let norm = 0;
-    for (let i = 0; i < r; i++) {
-      for (let j = 0; j < r; j++) {
-        let value = 0;
-        for (let m = 0; m < r; m++) value += power[i * r + m]! * power[m * r + j]!;
-        next[i * r + j] = value;
-        norm = Math.max(norm, Math.abs(value));
-      }
-    }
-    logNorm *= 2;
-    if (!(norm > 0)) return 0;
-    logNorm += Math.log(norm);
-    power = next.map((value) => value / norm);
-  }
-  return path.period > 0 ? Math.exp(logNorm / 2 ** POWER_SQUARINGS) : 0;
-}
-
-/** Newton and mesh refinement for one system; keeps count of the work. */
-class Search {
-  readonly #coordinates: ChargeCoordinates;
-  readonly #settings: Settings;
-  #map: PeriodMap | undefined;
-  readonly #rule: DefectRule;
-  #passes = 0;
-  #factorizations = 0;
-  transientSteps = 0;
-  history: number[] = [];
-
-  constructor(coordinates: ChargeCoordinates, settings: Settings) {
-    this.#coordinates = coordinates;
-    this.#settings = settings;
-    this.#rule = defectRule(settings.method);
-  }
-
-  /** Takes over a neighbour's work arrays. */
-  adopt({ discrete }: Orbit): void {
-    if (discrete.method === this.#settings.method) this.#map = discrete.map;
-  }
-
-  work(): Work {
-    return {
-      evaluations: this.#coordinates.evaluations,
-      factorizations: this.#factorizations,
-      passes: this.#passes,
-      transientSteps: this.transientSteps,
-    };
-  }
-
-  /** From a path near the orbit to an orbit whose estimate meets the tolerance. */
-  refine(begin: Path, { kept = false }: { kept?: boolean } = {}): OrbitResult {
-    const { method, steps, tolerance } = this.#settings;
-    const { n, r } = this.#coordinates;
-    let path = begin;
-    const present = path.mesh.length - 1;
-    const wanted = steps ?? Math.min(Math.max(present, FEWEST_STEPS), MOST_STEPS);
-    if (wanted !== present) {
-      const mesh = spreadMesh(path.mesh, new Float64Array(present), { steps: wanted, order: 1 });
-      if (present < FEWEST_STEPS / 2) {
-        return failure("no convergence", "the cycle has too few steps to begin with", {
-          work: this.work(),
-        });
-      }
-      path = moveToMesh(path, mesh, { method, n, r });
-    }
-    const tooGood = kept ? TOO_GOOD_KEPT : TOO_GOOD;
-    let refined = false;
-    for (let round = 0; round < MESH_ROUNDS; round++) {
-      const orbit = this.#newton(path);
-      if (!(orbit instanceof Orbit)) return orbit;
-      const excess = Math.max(
-        orbit.estimate.period / tolerance,
-        orbit.estimate.sensitivity / (SENSITIVITY_ALLOWANCE * tolerance),
-      );
-      const count = orbit.steps;
-      const coarsen = !refined && excess < tooGood && count > FEWEST_STEPS;
-      if (steps !== undefined || (excess <= 1 && !coarsen)) return orbit;
-      refined ||= excess > 1;
-      const ratio = (excess / MESH_MARGIN) ** (1 / (2 * method.stages));
-      const next = Math.ceil(count * Math.min(Math.max(ratio, 0.5), LARGEST_REFINEMENT));
-      if (next > MOST_STEPS || (round === MESH_ROUNDS - 1)) {
-        return failure(
-          "no convergence",
-          `the tolerance ${tolerance} is out of reach: the estimate is ${
-            orbit.estimate.period.toExponential(2)
-          } for the period and ${
-            orbit.estimate.sensitivity.toExponential(2)
-          } for the sensitivity with ${count} steps`,
-          { history: this.history, work: this.work(), orbit },
-        );
-      }
-      const mesh = spreadMesh(path.mesh, orbit.discrete.nodes.localError, {
-        steps: Math.max(next, FEWEST_STEPS),
-        order: 2 * method.stages + 2,
-      });
-      path = moveToMesh(orbit.discrete.path, mesh, { method, n, r });
-    }
-    throw new Error("unreachable: every round returns or refines");
-  }
-
-  #newton(begin: Path): OrbitResult {
-    const { method, tolerance } = this.#settings;
-    const steps = begin.mesh.length - 1;
-    if (!this.#map || this.#map.steps !== steps || this.#map.method !== method) {
-      this.#map = new PeriodMap(this.#coordinates, method, steps);
-    }
-    const map = this.#map;
-    map.load(begin, this.#coordinates);
-    const target = Math.max(ROUNDING, LINEARISED_WITHIN * tolerance);
-    this.history = [];
-    let reuse = false;
-    let smallest = Infinity;
-    let stalled = 0;
-    let residual = Infinity;
-    for (let pass = 0; pass < NEWTON_PASSES; pass++) {
-      const before = map.factorizations;
-      residual = reuse ? map.reevaluate() : map.linearise();
-      this.#passes++;
-      this.#factorizations += map.factorizations - before;
-      if (Number.isNaN(residual)) {
-        return failure("no convergence", "the equations cannot be evaluated on Newton's path", {
-          history: this.history,
-          work: this.work(),
-        });
-      }
-      const update = map.update(NEWTON_BOUND);
-      const size = Math.max(update.state, update.period);
-      this.history.push(size);
-      if (!(size < Infinity && map.period > 0)) break;
-      if (!reuse && size < target) return this.#finish(map, residual);
-      stalled = size < smallest ? 0 : stalled + 1;
-      if (stalled >= STALLED_PASSES) break;
-      smallest = Math.min(smallest, size);
-      // What a full pass leaves is about its update squared; where that is still too much and one
-      // pass with the same factors mends it, the factors are reused.
-      reuse = !reuse && size ** 2 > target && size ** 3 < target;
-    }
-    return failure("no convergence", "Newton did not converge on a closed path", {
-      history: this.history,
-      work: this.work(),
-    });
-  }
-
-  #finish(map: PeriodMap, residual: number): OrbitResult {
-    const { method } = this.#settings;
-    const coordinates = this.#coordinates;
-    const adjoint = map.adjoint();
-    const path = map.copy();
-    const nodes = nodeValues(coordinates, path, {
-      adjoint,
-      method,
-      rule: this.#rule,
-      stageFlow: map.stageCurrents,
-    });
-    if (!nodes) {
-      return failure("no convergence", "no state at a mesh point satisfies the equations", {
-        history: this.history,
-        work: this.work(),
-      });
-    }
-    return new Orbit({
-      residual,
-      estimate: { period: nodes.periodError, sensitivity: nodes.sensitivityError },
-      work: this.work(),
-      discrete: { coordinates, method, path, adjoint, nodes, map },
-      stepMaps: map.stepMaps.slice(),
-    });
-  }
-}
-
-function sameMesh(a: Float64Array, b: Float64Array): boolean {
-  return a.length === b.length && a.every((value, k) => value === b[k]);
-}
-
-/**
- * A guess of the orbit at a parameter value from up to four orbits at other values on the same mesh,
- * by polynomial extrapolation; fewer are used where meshes differ.
- *
- * @param orbits nearest last, at least one
- * @param at parameter values of the orbits and the value wanted, in any one unit
- */
-export function extrapolateOrbits(
-  orbits: readonly Orbit[],
-  at: { readonly values: readonly number[]; readonly wanted: number },
-): OrbitGuess {
-  const neighbour = orbits[orbits.length - 1];
-  if (!neighbour || at.values.length !== orbits.length) {
-    throw new TypeError(
-      `Cannot extrapolate orbits: as many values as orbits are needed, at least one, found ${orbits.length} orbits and ${at.values.length} values`,
-    );
-  }
-  const usable: { path: Path; value: number }[] = [];
-  for (let k = orbits.length - 1; k >= 0 && usable.length < EXTRAPOLATED; k--) {
-    const { path } = orbits[k]!.discrete;
-    if (!sameMesh(path.mesh, neighbour.discrete.path.mesh)) break;
-    usable.push({ path, value: at.values[k]! });
-  }
-  const weights = usable.map((own, j) =>
-    usable.reduce(
-      (product, other, k) =>
-        k === j ? product : product * (at.wanted - other.value) / (own.value - other.value),
-      1,
-    )
-  );
-  const combine = (read: (path: Path) => Float64Array) => {
-    const sum = new Float64Array(read(neighbour.discrete.path).length);
-    usable.forEach(({ path }, k) => {
-      const values = read(path);
-      const weight = weights[k]!;
-      for (let i = 0; i < sum.length; i++) sum[i]! += weight * values[i]!;
-    });
-    return sum;
-  };
-  return {
-    status: "guess",
-    neighbour,
-    path: {
-      mesh: neighbour.discrete.path.mesh,
-      stages: combine((path) => path.stages),
-      charges: combine((path) => path.charges),
-      period: usable.reduce((sum, { path }, k) => sum + weights[k]! * path.period, 0),
-    },
-  };
 }

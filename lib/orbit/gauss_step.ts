@@ -17,7 +17,11 @@ const SLOW_CONTRACTION = 0.2;
 /** Longest change of a scaled stage value in one iteration. */
 const STEP_BOUND = 3;
 
-/** Values of the stages of one step or of many, one after the other. */
+/**
+ * Values of the stages of one step or of many, one after the other.
+ *
+ * @internal
+ */
 export interface StageValues {
   /** Scaled charges, shape (stages, r). */
   readonly q: Float64Array;
@@ -29,6 +33,11 @@ export interface StageValues {
   readonly G: Float64Array;
 }
 
+/**
+ * Arrays for the values of `stages` stages.
+ *
+ * @internal
+ */
 export function stageValues(stages: number, { n, r }: { n: number; r: number }): StageValues {
   return {
     q: new Float64Array(stages * r),
@@ -38,7 +47,11 @@ export function stageValues(stages: number, { n, r }: { n: number; r: number }):
   };
 }
 
-/** Evaluates the system at the stages `first ... first + count` of `X`, shape (stages, n). */
+/**
+ * Evaluates the system at the stages `first ... first + count` of `X`, shape (stages, n).
+ *
+ * @internal
+ */
 export function evaluateStages(
   coordinates: ChargeCoordinates,
   X: Float64Array,
@@ -67,6 +80,8 @@ export function evaluateStages(
  *
  * Its rows and columns go through the stages of one unknown before the next: unknowns that come first
  * in the system and meet few others, such as winding currents, are then eliminated cheaply.
+ *
+ * @internal
  */
 export function assembleMatrix(
   coordinates: ChargeCoordinates,
@@ -100,6 +115,8 @@ export function assembleMatrix(
 /**
  * Writes the negative residual of the stage equations, in the order of the stage matrix, into
  * `out[outAt...]` with the given stride and returns its largest entry.
+ *
+ * @internal
  */
 export function stageResidual(
   coordinates: ChargeCoordinates,
@@ -137,7 +154,11 @@ export function stageResidual(
   return largest;
 }
 
-/** Solves single steps; owns the work arrays of one step. */
+/**
+ * Solves single steps; owns the work arrays of one step.
+ *
+ * @internal
+ */
 export class GaussStepper {
   readonly coordinates: ChargeCoordinates;
   readonly method: GaussMethod;

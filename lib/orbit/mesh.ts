@@ -3,7 +3,7 @@ import type { GaussMethod } from "../numeric/gauss.ts";
 import type { Path } from "./period_map.ts";
 
 /** Part of the mean error density that every step carries: keeps the mesh from starving smooth parts. */
-const EVENNESS = 0.7;
+const EVENNESS = 0.1;
 /** Neighbouring steps may differ by about this part of their length. */
 const GRADING = 0.2;
 /** Mesh points used to interpolate charges onto a new mesh. */
@@ -15,6 +15,8 @@ const CHARGE_POINTS = 6;
  * @param localError local error of each step of the present mesh, shape (steps,)
  * @param order order of the local error in the step length
  * @see C. de Boor, in Lecture Notes in Mathematics 363 (1974) 12; Ascher, Mattheij, Russell ch. 9
+ *
+ * @internal
  */
 export function spreadMesh(
   mesh: Float64Array,
@@ -50,7 +52,11 @@ export function spreadMesh(
   return spread;
 }
 
-/** The path on another mesh, by local polynomials: a start for Newton, not a result. */
+/**
+ * The path on another mesh, by local polynomials: a start for Newton, not a result.
+ *
+ * @internal
+ */
 export function moveToMesh(
   path: Path,
   mesh: Float64Array,

@@ -14,12 +14,8 @@ export {
   type Pole,
   polesAt,
 } from "./equilibrium.ts";
-export {
-  extrapolateOrbits,
-  findOrbit,
-  type FindOrbitOptions,
-  type OrbitGuess,
-} from "./find_orbit.ts";
+export { findOrbit, type FindOrbitOptions } from "./find_orbit.ts";
+export { extrapolateOrbits, type OrbitGuess } from "./orbit_guess.ts";
 export {
   type Estimate,
   Orbit,

@@ -6,7 +6,11 @@ const ROUNDS = 6;
 /** Two directions couple when the last round still turns one into the other by more than this. */
 const COUPLED = 1e-11;
 
-/** A multiplier of the period map, kept as logarithm: it may be below the smallest number. */
+/**
+ * A multiplier of the period map, kept as logarithm: it may be below the smallest number.
+ *
+ * @internal
+ */
 export interface Multiplier {
   /** Natural logarithm of the modulus. */
   readonly logModulus: number;
@@ -23,6 +27,8 @@ export interface Multiplier {
  *
  * @param stepMaps maps in the order of time, shape (steps, r, r), row-major
  * @see L. Dieci, R. Russell, E. Van Vleck, SIAM J. Numer. Anal. 34 (1997) 402, discrete QR method
+ *
+ * @internal
  */
 export function multipliersOf(stepMaps: Float64Array, r: number): Multiplier[] {
   const steps = stepMaps.length / (r * r);
@@ -125,7 +131,11 @@ function blocks(
   return found.sort((a, b) => b.logModulus - a.logModulus || b.argument - a.argument);
 }
 
-/** The multiplier as a complex number; zero where it is below the smallest one. */
+/**
+ * The multiplier as a complex number; zero where it is below the smallest one.
+ *
+ * @internal
+ */
 export function multiplierValue({ logModulus, argument }: Multiplier): Complex {
   const size = Math.exp(logModulus);
   return { re: size * Math.cos(argument), im: size * Math.sin(argument) };

@@ -26,7 +26,11 @@ const SENSITIVITY_SAFETY = 3;
 /** A relative error of the period shifts the phase by up to this many times itself, in radians. */
 const PERIOD_TO_PHASE = 2 * Math.PI;
 
-/** Constants of the error estimate of a Gauss method; they depend on the number of stages only. */
+/**
+ * Constants of the error estimate of a Gauss method; they depend on the number of stages only.
+ *
+ * @internal
+ */
 export interface DefectRule {
   /** Points inside a step at which the defect is looked at besides its ends, shape (s - 1,). */
   readonly points: Float64Array;
@@ -46,6 +50,8 @@ export interface DefectRule {
 /**
  * The defect of a collocation path vanishes at the s stages: it is the polynomial with those zeros
  * times one of degree s, which s + 1 further points determine.
+ *
+ * @internal
  */
 export function defectRule(method: GaussMethod): DefectRule {
   const { nodes, stages: s } = method;
@@ -79,7 +85,11 @@ export function defectRule(method: GaussMethod): DefectRule {
   };
 }
 
-/** What the mesh points tell. */
+/**
+ * What the mesh points tell.
+ *
+ * @internal
+ */
 export interface NodeValues {
   /** Scaled states at the mesh points, shape (steps, n). */
   readonly states: Float64Array;
@@ -159,6 +169,8 @@ class FlowReader {
  *
  * @returns the values, or undefined where a state at a mesh point could not be found
  * @see N. Pierce, M. Giles, SIAM Rev. 42 (2000) 247, adjoint error estimates
+ *
+ * @internal
  */
 export function nodeValues(
   coordinates: ChargeCoordinates,
@@ -280,7 +292,11 @@ export function nodeValues(
   };
 }
 
-/** Range of each scaled charge over the mesh points, shape (r,). */
+/**
+ * Range of each scaled charge over the mesh points, shape (r,).
+ *
+ * @internal
+ */
 export function rangeOf(charges: Float64Array, r: number, count: number): Float64Array {
   const low = new Float64Array(r).fill(Infinity);
   const high = new Float64Array(r).fill(-Infinity);

@@ -57,7 +57,11 @@ export interface OrbitSamples {
   readonly states: Float64Array;
 }
 
-/** Where inside the mesh a time lies. */
+/**
+ * Where inside the mesh a time lies.
+ *
+ * @internal
+ */
 export interface Place {
   readonly step: number;
   /** Time since the start of the step [s]. */

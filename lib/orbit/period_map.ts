@@ -23,7 +23,11 @@ import {
   stageValues,
 } from "./gauss_step.ts";
 
-/** A discrete closed path: what Newton works on and what a found orbit keeps. */
+/**
+ * A discrete closed path: what Newton works on and what a found orbit keeps.
+ *
+ * @internal
+ */
 export interface Path {
   /** Mesh as fractions of the period, shape (steps + 1,), from 0 to 1. */
   readonly mesh: Float64Array;
@@ -35,7 +39,11 @@ export interface Path {
   readonly period: number;
 }
 
-/** The adjoint of the period map on its unit multiplier, per scaled charge. */
+/**
+ * The adjoint of the period map on its unit multiplier, per scaled charge.
+ *
+ * @internal
+ */
 export interface Adjoint {
   /** Seconds per scaled charge at the mesh points, shape (steps + 1, r). */
   readonly nodes: Float64Array;
@@ -47,7 +55,11 @@ export interface Adjoint {
   readonly closure: number;
 }
 
-/** The size of one Newton update. */
+/**
+ * The size of one Newton update.
+ *
+ * @internal
+ */
 export interface Update {
   /** Largest change of a scaled state. */
   readonly state: number;
@@ -55,6 +67,11 @@ export interface Update {
   readonly period: number;
 }
 
+/**
+ * The period map of one system on one mesh, with its work arrays.
+ *
+ * @internal
+ */
 export class PeriodMap {
   coordinates: ChargeCoordinates;
   readonly method: GaussMethod;

@@ -41,6 +41,11 @@ const CYCLE_STEPS = 1500;
 const CROSSING_ITERATIONS = 12;
 const CROSSING_TOLERANCE = 1e-7;
 
+/**
+ * How the next cycle of a transient ended.
+ *
+ * @internal
+ */
 export type CycleOutcome =
   | {
     readonly status: "closed";
@@ -80,6 +85,11 @@ class Ranges {
   }
 }
 
+/**
+ * A motion integrated cycle by cycle.
+ *
+ * @internal
+ */
 export class Transient {
   readonly stepper: GaussStepper;
   steps = 0;

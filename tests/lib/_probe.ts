@@ -1,11 +1,12 @@
-import { findOrbit } from "../../lib/orbit/find_orbit.ts";
-import { Transient } from "../../lib/orbit/transient.ts";
-import { ChargeCoordinates } from "../../lib/orbit/charge_coordinates.ts";
-import { gaussMethod } from "../../lib/numeric/gauss.ts";
-import { stuartLandau } from "./orbit/_systems.ts";
-const {system}=stuartLandau({ growth: -0.3, frequency: 2, damping: 1, shear: 0 });
-const start=Float64Array.of(1,0);
-const c=new ChargeCoordinates(system,start);
-const t=new Transient(c,gaussMethod(3),{start,charges:start.slice(),firstStep:1e-2/2,longestStep:Infinity});
-for(let i=0;i<20;i++){const o=t.nextCycle(80000);console.log(o.status, o.status==="closed"?[o.path.mesh.length,o.size,o.growth,o.path.period, o.path.mesh[1]]:o);if(o.status!=="closed")break}
-try{console.log(findOrbit(system,{start}))}catch(e){console.log(e)}
+import { crossCoupledPair } from "../../lib/circuit/cross_coupled_pair.ts";
+import { illustrativeCard } from "./device/_card.ts";
+import { NOMINAL, PAIR_DESIGN } from "./circuit/_examples.ts";
+import { findEquilibrium } from "../../lib/orbit/equilibrium.ts";
+import { orbitOf } from "./orbit/_systems.ts";
+import { phaseDiffusion } from "../../lib/orbit/phase_diffusion.ts";
+const b=crossCoupledPair.build(PAIR_DESIGN,{card:illustrativeCard(),condition:NOMINAL});
+const e=findEquilibrium(b.circuit.system,{guess:b.guess});
+const o=orbitOf(b.circuit.system,{start:e});
+const p=o.phasor(x=>b.circuit.voltage("plus","minus",x));
+const d=phaseDiffusion(o,b.circuit.sources);
+console.log(o.frequency,Math.hypot(p.re,p.im),2/Math.PI*2e-3/b.tank.conductance(1),o.steps,o.estimate,o.exponents.map(x=>x.re*o.period),d.sources.map(s=>[s.device,s.label,s.diffusion/d.total]));
