@@ -17,7 +17,6 @@ const CHECKS: readonly Check[] = [
   { name: "notebook cells", args: ["run", "-A", "tools/check_cells.ts"] },
   { name: "structure", args: ["run", "-A", "tools/check_structure.ts"] },
   { name: "words", args: ["run", "-A", "tools/check_words.ts"] },
-  { name: "public types", args: ["doc", "--lint", "lib/mod.ts", "kernel/mod.ts"] },
   { name: "doc comments", args: ["run", "-A", "tools/check_docs.ts"] },
   { name: "links", args: ["run", "-A", "tools/check_links.ts"] },
   { name: "benchmarks run", args: ["run", "-A", "tools/bench_smoke.ts"] },

@@ -49,7 +49,8 @@ function declaredField(name: string, field: Field): DeclaredField {
   if (field.kind === "fixed") {
     if (!(field.reason?.trim().length > 0)) throw new TypeError("reason must be a text, got none");
     const value = unit === "word" ? field.value : parseQuantity(field.value, unit);
-    return { name, kind: "fixed", unit, question, value, reason: field.reason };
+    const { reason } = field;
+    return { name, kind: "fixed", unit, question, value, written: field.value, reason };
   }
   if (unit === "word") {
     if (!((field.options?.length ?? 0) > 0)) {

@@ -65,9 +65,7 @@ interface Given {
 
 function fillFixed(field: DeclaredField, { given, file, template }: Given): Outcome {
   const value = field.value!;
-  const text = typeof value === "string"
-    ? value
-    : formatQuantity(value, field.unit, { digits: FIXED_DIGITS });
+  const text = field.written ?? String(value);
   if (given === undefined) return { value, filled: { ...field, text } };
   return {
     problems: [

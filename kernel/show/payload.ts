@@ -75,6 +75,8 @@ export interface DeclaredField {
   readonly question: string;
   /** The lead's value of a fixed field: SI, or a word. */
   readonly value?: number | string;
+  /** The lead's value as written, with unit. */
+  readonly written?: string;
   /** Why the lead fixed it so. */
   readonly reason?: string;
   /** Bounds of a choice, SI, inclusive. */

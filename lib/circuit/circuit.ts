@@ -30,6 +30,7 @@ interface PlacedDevice {
   readonly out: Float64Array;
 }
 
+/** Elements assembled into a system, and how to read its states. */
 export interface Circuit {
   readonly system: OscillatorSystem;
   /** White and 1/f sources, one-sided signed amplitudes. */

@@ -92,6 +92,7 @@ export interface DeviceElement {
   readonly transistor?: Transistor;
 }
 
+/** Anything a circuit is made of. */
 export type CircuitElement =
   | ResistorElement
   | CapacitorElement
@@ -100,7 +101,11 @@ export type CircuitElement =
   | PotentialElement
   | DeviceElement;
 
-/** Length of `out` of a device with `terminals` terminals. */
+/**
+ * Length of `out` of a device.
+ *
+ * @param terminals number of terminals k [1]
+ */
 export function deviceValues(terminals: number): number {
   return 2 * terminals * (1 + terminals);
 }

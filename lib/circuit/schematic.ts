@@ -10,6 +10,7 @@ export interface Schematic {
   readonly joints: readonly (readonly [number, number])[];
 }
 
+/** What a symbol stands for. */
 export type SymbolKind =
   | "inductor"
   | "capacitor"
@@ -21,6 +22,7 @@ export type SymbolKind =
   | "ground"
   | "label";
 
+/** One symbol of a schematic. */
 export interface SchematicSymbol {
   readonly kind: SymbolKind;
   readonly name: string;

@@ -26,13 +26,15 @@ export interface TankDesign {
   readonly coupling?: number;
 }
 
-/** A hand formula's value, with its own test of validity. */
+/** A hand formula in words and symbols. */
 export interface HandValue {
   /** In words: "amplitude by (2/pi) I R". */
   readonly name: string;
   /** TeX of the formula. */
   readonly formula: string;
   readonly source: string;
+  /** Where it holds, in words. */
+  readonly holds?: string;
 }
 
 /** A device voltage watched against the card's limits. */
@@ -70,8 +72,50 @@ export interface BuiltOscillator {
   readonly guess: Float64Array;
   readonly watched: readonly WatchedVoltage[];
   readonly patterns: readonly ModePattern[];
-  /** Names of the devices by part: what makes up "pair", "tail", "mirror". */
+  /** Names of the devices by part: what makes up "tank", "pair" (the core), "tail", "mirror". */
   readonly parts: Readonly<Record<string, readonly string[]>>;
+  /**
+   * A state well away from the equilibrium, shape (n,), and about the period [s]: where an orbit may
+   * still be found when the equilibrium is stable.
+   */
+  readonly kick?: { readonly state: Float64Array; readonly period: number };
+  /**
+   * The transconductance that the hand formula of the loop gain counts, at an equilibrium.
+   * @default the gate transconductance of the first device of the part "pair"
+   */
+  readonly core?: (state: Float64Array) => CoreValues;
+  /** Fraction n of the tank voltage at a capacitive divider's tap, C1 / (C1 + C2) [1]. */
+  readonly tap?: number;
+}
+
+/** What the devices that make the negative conductance are at an operating point. */
+export interface CoreValues {
+  /** What the loop gain counts: gm of one side, the sum of both kinds, or gms of a common gate [S]. */
+  readonly transconductance: number;
+  /** Thermal noise conductance over that transconductance [1]. */
+  readonly gamma: number;
+}
+
+/** What a hand formula of the amplitude takes. */
+export interface AmplitudeValues {
+  /** Programmed current, both sides together [A]. */
+  readonly current: number;
+  /** Parallel loss resistance between the output nodes [ohm]. */
+  readonly resistance: number;
+  /** Fraction at the divider's tap, where there is one [1]. */
+  readonly tap?: number;
+  /** Supply voltage, for formulas that are limited by it [V]. */
+  readonly supply?: number;
+}
+
+/** What a hand formula of the startup loop gain takes. */
+export interface LoopGainValues {
+  /** {@linkcode CoreValues.transconductance} [S]. */
+  readonly transconductance: number;
+  /** Parallel loss resistance between the output nodes [ohm]. */
+  readonly resistance: number;
+  /** Fraction at the divider's tap, where there is one [1]. */
+  readonly tap?: number;
 }
 
 /**
@@ -87,10 +131,10 @@ export interface Topology<Design> {
   schematic(design: Design): Schematic;
   /** The same design at another programmed current [A]. */
   withCurrent(design: Design, current: number): Design;
-  /** Amplitude by the hand formula, current-limited [V], from programmed current and tank resistance. */
-  amplitude(values: { current: number; resistance: number }): number;
+  /** Amplitude by the hand formula [V]. */
+  amplitude(values: AmplitudeValues): number;
   readonly amplitudeFormula: HandValue;
-  /** Startup loop gain by the hand formula [1], from the pair's transconductance at the operating point. */
-  loopGain(values: { transconductance: number; resistance: number }): number;
+  /** Startup loop gain by the hand formula [1]. */
+  loopGain(values: LoopGainValues): number;
   readonly loopGainFormula: HandValue;
 }

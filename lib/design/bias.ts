@@ -18,6 +18,11 @@ const INTERMEDIATE = 3;
 const BEGIN_AT = 0.6;
 /** Orbits behind the present one that its guess is extrapolated from. */
 const TRAIL = 4;
+/** Orbits a slope needs; where fewer exist, two at currents this factor to either side join for the slope. */
+const FEWEST_FOR_SLOPE = 3;
+const ASIDE = 1.02;
+/** Marks a point of the curve that is none of the sweep's. */
+const ASIDE_INDEX = -1;
 /** An amplitude below this part of its neighbour's is the equilibrium, not an orbit. */
 const VANISHED = 0.02;
 
@@ -39,6 +44,7 @@ export interface BiasPoint {
   readonly reason?: string;
 }
 
+/** A sweep of the programmed current. */
 export interface BiasSweep {
   readonly condition: Condition;
   readonly points: readonly BiasPoint[];
@@ -49,6 +55,7 @@ export interface BiasSweep {
   readonly kneeExponent: number;
 }
 
+/** Options of {@linkcode biasSweep}. */
 export interface BiasSweepOptions {
   readonly card: TechnologyCard;
   readonly condition: Condition;
@@ -141,13 +148,24 @@ export function biasSweep<Design>(
     const own = figures[k];
     return own ? [{ index: k, current: point.current, figures: own }] : [];
   });
-  const axis = alive.map(({ current }) => current);
-  const amplitudeExponents = localExponents(axis, alive.map(({ figures }) => figures.amplitude));
-  const ratio = alive.map(({ figures }) => figures.diffusion * figures.frequency ** 2);
+  const first = alive[0] && points[alive[0].index];
+  const aside = !first || alive.length >= FEWEST_FOR_SLOPE ? [] : [1 / ASIDE, ASIDE].flatMap(
+    (factor) => {
+      const current = first.current * factor;
+      const { oscillator, orbit } = follow(build, [first], current);
+      if (!orbit) return [];
+      const own = operatingFigures(oscillator, orbit, { supply: condition.supply, offset });
+      return [{ index: ASIDE_INDEX, current, figures: own }];
+    },
+  );
+  const curve = [...alive, ...aside].sort((a, b) => a.current - b.current);
+  const axis = curve.map(({ current }) => current);
+  const amplitudeExponents = localExponents(axis, curve.map(({ figures }) => figures.amplitude));
+  const ratio = curve.map(({ figures }) => figures.diffusion * figures.frequency ** 2);
   const noiseExponents = localExponents(axis, ratio);
-  const quietest = alive.reduce<number | undefined>(
-    (best, point, k) =>
-      best === undefined || (ratio[k] ?? Infinity) < (ratio[best] ?? Infinity) ? k : best,
+  const quietest = curve.reduce<number | undefined>(
+    (best, { index }, k) =>
+      index !== ASIDE_INDEX && (ratio[k] ?? Infinity) < (ratio[best ?? -1] ?? Infinity) ? k : best,
     undefined,
   );
   return {
@@ -156,7 +174,7 @@ export function biasSweep<Design>(
     knee: kneeCurrent(axis, amplitudeExponents, { kneeExponent }),
     quietest: quietest === undefined ? undefined : axis[quietest],
     points: points.map((point, k): BiasPoint => {
-      const place = alive.findIndex(({ index }) => index === k);
+      const place = curve.findIndex(({ index }) => index === k);
       const started = startup(point.oscillator);
       const found = started.status === "found" ? started : undefined;
       const amplitudeExponent = place >= 0 ? amplitudeExponents[place] : undefined;

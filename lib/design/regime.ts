@@ -36,16 +36,27 @@ export function regimeOf(
 }
 
 /**
- * Slopes d ln y / d ln x of a sampled curve by local parabolas in the logarithms, shape (m,).
+ * Slopes d ln y / d ln x of a sampled curve by local parabolas in the logarithms, shape (m,); the chord's
+ * for two points, undefined for one.
  *
  * @param x abscissas, increasing, positive, shape (m,)
  * @param y values, positive, shape (m,)
  */
-export function localExponents(x: readonly number[], y: readonly number[]): number[] {
+export function localExponents(
+  x: readonly number[],
+  y: readonly number[],
+): (number | undefined)[] {
   const count = x.length;
-  if (count < 3) return x.map(() => NaN);
   const lx = x.map(Math.log);
   const ly = y.map(Math.log);
+  if (count < 3) {
+    const [x0, x1] = lx;
+    const [y0, y1] = ly;
+    const chord = x0 === undefined || x1 === undefined || y0 === undefined || y1 === undefined
+      ? undefined
+      : (y1 - y0) / (x1 - x0);
+    return x.map(() => chord);
+  }
   return x.map((_, k) => {
     const i = Math.min(Math.max(k, 1), count - 2);
     const [x0, x1, x2] = [lx[i - 1] ?? NaN, lx[i] ?? NaN, lx[i + 1] ?? NaN];
@@ -65,7 +76,7 @@ export function localExponents(x: readonly number[], y: readonly number[]): numb
  */
 export function kneeCurrent(
   currents: readonly number[],
-  exponents: readonly number[],
+  exponents: readonly (number | undefined)[],
   { kneeExponent = KNEE_EXPONENT }: { readonly kneeExponent?: number } = {},
 ): number | undefined {
   for (let k = 1; k < currents.length; k++) {

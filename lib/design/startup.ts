@@ -19,6 +19,8 @@ import type { SystemValues } from "../orbit/system.ts";
 const FREQUENCY_ITERATIONS = 50;
 /** Relative accuracy of the frequency at which the port is resistive. */
 const FREQUENCY_TOLERANCE = 1e-13;
+/** A mode without loss, unseen by the port, makes the matrix singular at its frequency: step aside by this. */
+const NUDGE = 1e-9;
 /** A start is complete at this part of the final amplitude. */
 const COMPLETE = 0.9;
 
@@ -30,6 +32,7 @@ export interface NamedPole {
   readonly im: number;
 }
 
+/** Startup of an oscillator. */
 export interface Startup {
   readonly status: "found";
   readonly equilibrium: Equilibrium;
@@ -132,28 +135,36 @@ function resistivePort(
   const [p, m] = [oscillator.circuit.indexOf(plus), oscillator.circuit.indexOf(minus)];
   if (p !== undefined) port[p] = 1;
   if (m !== undefined) port[m] = -1;
+  const admittance = (w: number) => {
+    const found = portAdmittance(values, port, w) ??
+      portAdmittance(values, port, w * (1 + NUDGE));
+    if (found) return found;
+    throw new RangeError(
+      `Cannot find the startup loop gain: the circuit has no answer at ${w / (2 * Math.PI)} Hz`,
+    );
+  };
   // Secant on the susceptance.
   let w0 = start;
-  let y0 = portAdmittance(values, port, w0);
+  let y0 = admittance(w0);
   let w1 = start * (1 + 1e-4);
-  let y1 = portAdmittance(values, port, w1);
+  let y1 = admittance(w1);
   for (let iteration = 0; iteration < FREQUENCY_ITERATIONS; iteration++) {
     if (y1.im === y0.im) break;
     const w2 = w1 - y1.im * (w1 - w0) / (y1.im - y0.im);
     [w0, y0] = [w1, y1];
     w1 = w2;
-    y1 = portAdmittance(values, port, w1);
+    y1 = admittance(w1);
     if (Math.abs(w1 - w0) < FREQUENCY_TOLERANCE * w1) break;
   }
   return { angularFrequency: w1, conductance: y1.re };
 }
 
-/** Admittance 1 / (e^T (j w C + G)^-1 e) of a port e at an angular frequency [S]. */
+/** Admittance 1 / (e^T (j w C + G)^-1 e) of a port e at an angular frequency [S]; none where that is singular. */
 function portAdmittance(
   { C, G }: SystemValues,
   port: Float64Array,
   w: number,
-): { re: number; im: number } {
+): { re: number; im: number } | undefined {
   const n = port.length;
   const size = 2 * n;
   const matrix = new Float64Array(size * size);
@@ -168,7 +179,7 @@ function portAdmittance(
   const x = new Float64Array(size);
   x.set(port);
   const pivots = new Int32Array(size);
-  factor(matrix, pivots, { n: size });
+  if (!factor(matrix, pivots, { n: size })) return undefined;
   solve(matrix, pivots, x, { n: size });
   let re = 0;
   let im = 0;

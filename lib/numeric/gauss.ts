@@ -57,7 +57,12 @@ export function gaussLegendre(count: number): { nodes: Float64Array; weights: Fl
   return { nodes, weights };
 }
 
-/** Values of the Lagrange polynomials on `nodes` at `x`, shape (nodes.length,). */
+/**
+ * Values of the Lagrange polynomials on `nodes` at a point, shape (nodes.length,).
+ *
+ * @param nodes distinct points, shape (m,)
+ * @param x where [1]
+ */
 export function lagrangeBasis(nodes: ArrayLike<number>, x: number): Float64Array {
   const count = nodes.length;
   const values = new Float64Array(count).fill(1);

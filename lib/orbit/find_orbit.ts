@@ -27,6 +27,7 @@ const DEFLECTION = 0.1;
 /** Steps per period of the fastest unstable mode at the start of a transient. */
 const STEPS_PER_MODE = 36;
 
+/** Options of {@linkcode findOrbit}. */
 export interface FindOrbitOptions {
   /** A state, shape (n,), an equilibrium, a neighbouring orbit or a guess made from several. */
   readonly start: Float64Array | Equilibrium | NoEquilibrium | Orbit | OrbitGuess;

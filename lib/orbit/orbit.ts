@@ -70,6 +70,7 @@ export interface Place {
   readonly length: number;
 }
 
+/** A periodic steady state. */
 export class Orbit {
   readonly status = "found";
   readonly system: OscillatorSystem;
@@ -296,4 +297,5 @@ export interface OrbitFailure {
   readonly orbit?: Orbit;
 }
 
+/** What looking for an orbit gives: the orbit, or why there is none. */
 export type OrbitResult = Orbit | OrbitFailure;

@@ -1,4 +1,4 @@
-import { Orbit } from "./orbit.ts";
+import type { Orbit } from "./orbit.ts";
 import type { Path } from "./period_map.ts";
 
 /** Most orbits an extrapolation goes through. */

@@ -29,6 +29,7 @@ export interface SourceDiffusion {
   readonly rms: number;
 }
 
+/** Phase diffusion of an orbit. */
 export interface PhaseDiffusion {
   readonly orbit: Orbit;
   readonly sources: readonly SourceDiffusion[];

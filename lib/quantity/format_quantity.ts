@@ -39,7 +39,7 @@ const PLAIN_EXPONENTS = { least: -4, most: 5 } as const;
  * {@linkcode parseQuantity} reads it back. The minus sign is the ASCII hyphen-minus; zero never carries
  * one. A unit without a prefix gets an engineering prefix; a unit written with one (`"mA/um"`) keeps it.
  *
- * @param value in SI units (K for `"°C"`, a fraction for `"%"` and `"ppm"`, decibels for decibels)
+ * @param value [unit] in SI units (K for `"°C"`, a fraction for `"%"` and `"ppm"`, decibels for decibels)
  * @param unit unit to write the value in; `"1"` for a pure number
  * @throws {RangeError} when the value is not finite or `digits` is out of range
  * @throws {SyntaxError} when the unit is unknown

@@ -86,10 +86,12 @@ for (const [name, design, condition] of CASES) {
       share = charging / power;
       return Math.abs((conduction + charging) / power - 1);
     });
-    console.log(share, errors);
     const figures = errors.map((error) => error.toExponential(1)).join(", ");
-    assert(errors[1]! < 1e-6 && errors[2]! < 1e-9, `errors ${figures}`);
+    assert(errors[1]! < 1e-8 && errors[2]! < 1e-12, `errors ${figures}`);
     assert(errors[2]! < errors[0]!, `errors ${figures}`);
+    // Shares of the channel charge after Ward and Dutton are not the slopes of one energy: round a cycle the
+    // charges themselves take or give a little. Found -1.7e-4 to 3.1e-4 of the supply's power.
+    assert(Math.abs(share) < 5e-4, `the devices' charges take ${share} of the power`);
   });
 
   Deno.test(`pair, ${name}: v1 . dq/dt = 1, one multiplier is 1 and the others lie inside`, () => {

@@ -1,5 +1,5 @@
 import { assert, assertClose, assertEquals, assertThrows } from "../../assert.ts";
-import { extrapolateOrbits, findOrbit } from "../../../lib/orbit/find_orbit.ts";
+import { findOrbit } from "../../../lib/orbit/find_orbit.ts";
 import { findEquilibrium } from "../../../lib/orbit/equilibrium.ts";
 import { odeSystem } from "../../../lib/orbit/ode_system.ts";
 import { Orbit, type OrbitFailure } from "../../../lib/orbit/orbit.ts";
@@ -46,21 +46,6 @@ Deno.test("findOrbit() keeps steps and stages as asked", () => {
     assertEquals(other.steps, 50);
     assertClose(other.period, orbit.period, { rtol: 1e-4, atol: 0 });
   }
-});
-
-Deno.test("findOrbit() follows a neighbour along a parameter, and extrapolation saves passes", () => {
-  const values = [1, 1.05, 1.1];
-  let orbit = orbitOf(vanDerPol(0.95).system, { start: vanDerPol(1).start });
-  const orbits = values.map((mu) => (orbit = orbitOf(vanDerPol(mu).system, { start: orbit })));
-  const { system } = vanDerPol(1.15);
-  const guess = extrapolateOrbits(orbits, { values, wanted: 1.15 });
-  // Cubic Lagrange through three equal steps leaves 0.05^3 of the third derivative.
-  assertClose(guess.path.period, orbitOf(system, { start: orbit }).period, { rtol: 1e-4, atol: 0 });
-  const guided = orbitOf(system, { start: guess });
-  const plain = orbitOf(system, { start: orbit });
-  assertClose(guided.period, plain.period, { rtol: 2e-8, atol: 0 });
-  assert(guided.work.passes < plain.work.passes, `${guided.work.passes}, ${plain.work.passes}`);
-  assertEquals(guided.work.transientSteps, 0);
 });
 
 Deno.test("findOrbit() bounds the work at default settings", () => {
@@ -221,11 +206,6 @@ Deno.test("findOrbit(): options outside their ranges are refused in words", () =
     () => findOrbit(rossler({ a: 0.2, b: 0.2, c: 2.5 }).system, { start: neighbour }),
     TypeError,
     /^Cannot continue an orbit: the system must have 2 unknowns, found 3$/,
-  );
-  assertThrows(
-    () => extrapolateOrbits([neighbour], { values: [1, 2], wanted: 3 }),
-    TypeError,
-    /found 1 orbits and 2 values$/,
   );
 });
 
