@@ -12,12 +12,22 @@ import type { TransistorOperatingPoint } from "../device/transistor_operating_po
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import type { Circuit } from "./circuit.ts";
 import { type CircuitElement, type DeviceElement, GROUND, transistorElement } from "./element.ts";
-import type { BuiltOscillator, Condition, TankDesign, WatchedVoltage } from "./topology.ts";
+import { tankResistance } from "./tank_resistance.ts";
+import type {
+  BuiltOscillator,
+  Condition,
+  CoreValues,
+  TankDesign,
+  WatchedVoltage,
+} from "./topology.ts";
 
 /** Coupling of the halves of a coil whose design does not say. */
 const DEFAULT_COUPLING = 0.6;
 /** Part of the supply that a kick deflects the tank by, peak of the tank voltage. */
 const KICK = 0.8;
+
+/** Capacitance a tank has at least, the devices' own, for the guess of its period [F]. */
+const LEAST_CAPACITANCE = 50e-15;
 
 /** Name of the supply's node. */
 export const SUPPLY = "supply";
@@ -60,26 +70,24 @@ export function workshop(
   };
 }
 
-/** @throws RangeError naming the first value that is not positive */
+/**
+ * @param action what cannot be done otherwise: "build the pair"
+ * @throws RangeError naming the first value that is not positive
+ */
 export function demandPositive(
-  what: string,
+  action: string,
   values: Readonly<Record<string, readonly [value: number, unit: string]>>,
 ): void {
   for (const [name, [value, unit]] of Object.entries(values)) {
     if (!(value > 0 && value < Infinity)) {
       throw new RangeError(
-        `Cannot build the ${what}: ${name} must be > 0 ${unit}, got ${value} ${unit}`.replaceAll(
+        `Cannot ${action}: ${name} must be > 0 ${unit}, got ${value} ${unit}`.replaceAll(
           / (?=,|$)/g,
           "",
         ),
       );
     }
   }
-}
-
-/** Parallel loss resistance of a plain tank, Q w L at the frequency of its quality factor [ohm]. */
-export function tankResistance({ inductance, quality, qualityFrequency }: TankDesign): number {
-  return quality * 2 * Math.PI * qualityFrequency * inductance;
 }
 
 /** A coil of two coupled halves from `plus` over its centre tap to `minus`. */
@@ -243,6 +251,22 @@ export function operatingPointIn(
   return element.transistor.operatingPoint(d ?? NaN, g ?? NaN, s ?? NaN, b ?? NaN);
 }
 
+/**
+ * The core's values from one transistor of it, whose twin's noise and transconductance are alike.
+ *
+ * @param of the transconductance that the loop gain counts: of the gate or of the source
+ */
+export function coreOf(
+  circuit: Circuit,
+  device: string,
+  { of }: { readonly of: "gm" | "gms" },
+): (state: Float64Array) => CoreValues {
+  return (state) => {
+    const point = operatingPointIn(circuit, device, state);
+    return { transconductance: point[of], gamma: point.noiseConductance / point[of] };
+  };
+}
+
 /** The tank port of a topology with differential outputs. */
 export function differentialTank(
   { tank, resistance }: { readonly tank: TankDesign; readonly resistance: number },
@@ -273,6 +297,6 @@ export function differentialKick(
   const apart = KICK * supply / 2;
   return {
     state: circuit.stateAt({ ...potentials, plus: plus + apart, minus: minus - apart }),
-    period: 2 * Math.PI * Math.sqrt(inductance * capacitance),
+    period: 2 * Math.PI * Math.sqrt(inductance * Math.max(capacitance, LEAST_CAPACITANCE)),
   };
 }

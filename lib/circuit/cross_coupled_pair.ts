@@ -1,13 +1,20 @@
-import { resolvePassives } from "../device/resolve_passives.ts";
-import { resolveTransistor } from "../device/resolve_transistor.ts";
-import { Transistor } from "../device/transistor.ts";
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import { pairSchematic } from "./_cross_coupled_pair_schematic.ts";
-import { assemble } from "./circuit.ts";
-import { type CircuitElement, GROUND, transistorElement } from "./element.ts";
-import type { BuiltOscillator, TankDesign, Topology } from "./topology.ts";
+import {
+  buildPair,
+  PAIR_LOOP_GAIN,
+  pairLoopGain,
+  railsOf,
+  SWITCHING_AMPLITUDE,
+  switchingAmplitude,
+} from "./_pair_parts.ts";
+import { upsideDown } from "./_schematic_parts.ts";
+import { capacitors, demandPositive, mirroredSources, workshop } from "./_topology_parts.ts";
+import type { CircuitElement } from "./element.ts";
+import { tankResistance } from "./tank_resistance.ts";
+import type { ModePattern, TankDesign, Topology } from "./topology.ts";
 
-const DEFAULT_COUPLING = 0.6;
+export { tankResistance } from "./tank_resistance.ts";
 
 /** Cross-coupled pair with a mirrored tail transistor. */
 export interface CrossCoupledPairDesign {
@@ -20,191 +27,164 @@ export interface CrossCoupledPairDesign {
   readonly current: number;
   /** Tail current over reference current; the mirror transistor is this much narrower [1]. */
   readonly mirrorRatio: number;
-  /** Load from each output to ground: buffer, wiring [F]. @default 0 */
+  /** Load from each output to the tail's rail: buffer, wiring [F]. @default 0 */
   readonly loadCapacitance?: number;
-  /** From the tail node to ground [F]. @default 0 */
+  /** From the tail transistor's drain to its rail [F]. @default 0 */
   readonly tailCapacitance?: number;
-  /** From the mirror's gate to ground [F]. @default 0 */
+  /** From the mirror's gate to its rail [F]. @default 0 */
   readonly mirrorCapacitance?: number;
+  /** Between the pair's sources and the tail. @default none */
+  readonly tailFilter?: TailFilter;
   /** Threshold option of all transistors. @default "regular" */
   readonly flavour?: string;
+}
+
+/**
+ * A coil between the pair's sources and the tail transistor, resonant at twice the frequency with the
+ * capacitance at the sources; `tailCapacitance` shorts the tail transistor's own noise.
+ *
+ * @see E. Hegazi, H. Sjoland, A. Abidi, IEEE J. Solid-State Circuits 36 (2001) 1921
+ */
+export interface TailFilter {
+  /** [H] */
+  readonly inductance: number;
+  /** Of the coil at twice the frequency at which the tank's quality factor holds [1]. */
+  readonly quality: number;
+  /** From the pair's sources to the tail's rail, besides the devices' own [F]. @default 0 */
+  readonly capacitance?: number;
 }
 
 /**
  * Cross-coupled N pair: coil with its centre tap at the supply, tail source from a transistor whose
  * gate is held by a diode-connected mirror carrying the reference current.
  *
- * States: two outputs, tail, mirror gate, two halves of the coil.
+ * States: two outputs, tail, mirror gate, two halves of the coil; with a tail filter its coil and the
+ * common sources.
  */
-export const crossCoupledPair: Topology<CrossCoupledPairDesign> = {
+export const crossCoupledPair: Topology<CrossCoupledPairDesign> = tailedPair("n", {
   name: "n_pair",
   title: "Cross-coupled N pair with mirrored tail transistor",
-  build(design, { card, condition }): BuiltOscillator {
-    const { tank, pair, tail, current, mirrorRatio } = design;
-    if (!(current > 0)) {
-      throw new RangeError(`Cannot build the pair: current must be > 0 A, got ${current} A`);
-    }
-    if (!(mirrorRatio > 0)) {
-      throw new RangeError(`Cannot build the pair: mirror ratio must be > 0, got ${mirrorRatio}`);
-    }
-    const { corner, temperature, supply } = condition;
-    const parameters = resolveTransistor(card, {
-      kind: "n",
-      flavour: design.flavour ?? "regular",
-      corner,
-      temperature,
-    });
-    const passives = resolvePassives(card, { corner, temperature });
-    const coupling = tank.coupling ?? DEFAULT_COUPLING;
-    const half = tank.inductance / (2 * (1 + coupling));
-    const resistance = tankResistance(tank) / passives.metalResistance;
-    const elements: CircuitElement[] = [
-      { kind: "potential", name: "supply", node: "supply", potential: supply },
-      {
-        kind: "inductor",
-        name: "coil",
-        windings: [
-          { nodes: ["plus", "supply"], inductance: half, seriesResistance: 0 },
-          { nodes: ["supply", "minus"], inductance: half, seriesResistance: 0 },
-        ],
-        coupling,
-        temperature,
-      },
-      ...(["plus", "minus"] as const).map((node): CircuitElement => ({
-        kind: "resistor",
-        name: `tank loss ${node}`,
-        nodes: ["supply", node],
-        resistance: resistance / 2,
-        temperature,
-      })),
-      {
-        kind: "capacitor",
-        name: "tank capacitor",
-        nodes: ["plus", "minus"],
-        capacitance: tank.capacitance * passives.capacitor,
-      },
-      ...optionalCapacitors([
-        ["load plus", "plus", design.loadCapacitance],
-        ["load minus", "minus", design.loadCapacitance],
-        ["tail capacitor", "tail", design.tailCapacitance],
-        ["mirror capacitor", "mirror", design.mirrorCapacitance],
-      ]),
-      transistorElement("pair plus", new Transistor(parameters, pair), {
-        drain: "plus",
-        gate: "minus",
-        source: "tail",
-        bulk: GROUND,
-      }),
-      transistorElement("pair minus", new Transistor(parameters, pair), {
-        drain: "minus",
-        gate: "plus",
-        source: "tail",
-        bulk: GROUND,
-      }),
-      transistorElement("tail", new Transistor(parameters, tail), {
-        drain: "tail",
-        gate: "mirror",
-        source: GROUND,
-        bulk: GROUND,
-      }),
-      transistorElement(
-        "mirror",
-        new Transistor(parameters, { ...tail, width: tail.width / mirrorRatio }),
-        { drain: "mirror", gate: "mirror", source: GROUND, bulk: GROUND },
-      ),
-      {
-        kind: "current",
-        name: "reference current",
-        nodes: ["supply", "mirror"],
-        current: current / mirrorRatio,
-      },
-    ];
-    const circuit = assemble(elements);
-    const conductance = 1 / resistance;
-    return {
-      circuit,
-      supplyNode: "supply",
-      tank: {
-        plus: "plus",
-        minus: "minus",
+});
+
+/** The mirror image of {@linkcode crossCoupledPair}: centre tap at ground, tail from the supply. */
+export const crossCoupledPairP: Topology<CrossCoupledPairDesign> = tailedPair("p", {
+  name: "p_pair",
+  title: "Cross-coupled P pair with mirrored tail transistor",
+});
+
+function tailedPair(
+  kind: "n" | "p",
+  { name, title }: { readonly name: string; readonly title: string },
+): Topology<CrossCoupledPairDesign> {
+  const { foot: rail } = railsOf(kind);
+  return {
+    name,
+    title,
+    build(design, { card, condition }) {
+      const { pair, tail, current, mirrorRatio, tailFilter: filter } = design;
+      demandPositive("build the pair", {
+        current: [current, "A"],
+        "mirror ratio": [mirrorRatio, ""],
+      });
+      const shop = workshop(card, { condition, flavour: design.flavour });
+      const common = filter ? "common" : "tail";
+      const { supply } = condition;
+      return buildPair(shop, {
+        kind,
+        size: pair,
+        design,
+        common,
+        foot: {
+          elements: [
+            ...capacitors([
+              ["tail capacitor", ["tail", rail], design.tailCapacitance],
+              ["mirror capacitor", ["mirror", rail], design.mirrorCapacitance],
+            ]),
+            ...mirroredSources(shop, {
+              kind,
+              size: tail,
+              current,
+              mirrorRatio,
+              outputs: [["tail", "tail"]],
+            }),
+            ...(filter ? filterElements(filter, { rail, design, shop }) : []),
+          ],
+          guess: {
+            tail: supply / 3,
+            mirror: supply / 2,
+            ...(filter ? { common: supply / 3 } : {}),
+          },
+          patterns: [
+            { name: "tail node", weights: { tail: 1 } },
+            { name: "mirror node", weights: { mirror: 1 } },
+            ...(filter ? [{ name: "tail filter", weights: { common: 1 } } as ModePattern] : []),
+          ],
+          parts: {
+            tail: ["tail"],
+            mirror: ["mirror"],
+            ...(filter ? { "tail filter": ["tail filter coil"] } : {}),
+          },
+          watched: ["tail"],
+        },
+      });
+    },
+    withCurrent: (design, current) => ({ ...design, current }),
+    schematic: ({ tank, pair, tail, current, mirrorRatio, tailFilter, ...capacitances }) => {
+      const upright = pairSchematic({
         inductance: tank.inductance,
-        conductance: () => conductance,
-      },
-      supplyCurrent: (x) =>
-        circuit.windingCurrent("coil", 1, x) - circuit.windingCurrent("coil", 0, x) +
-        (2 * supply - circuit.potential("plus", x) - circuit.potential("minus", x)) * 2 /
-          resistance +
-        current / mirrorRatio,
-      guess: circuit.stateAt({ plus: supply, minus: supply, tail: supply / 3, mirror: supply / 2 }),
-      watched: watchedVoltages(),
-      patterns: [
-        { name: "tank", weights: { plus: 1, minus: -1 } },
-        { name: "common mode", weights: { plus: 1, minus: 1 } },
-        { name: "tail node", weights: { tail: 1 } },
-        { name: "mirror node", weights: { mirror: 1 } },
-      ],
-      parts: {
-        tank: ["tank loss plus", "tank loss minus"],
-        pair: ["pair plus", "pair minus"],
-        tail: ["tail"],
-        mirror: ["mirror"],
-      },
-    };
-  },
-  withCurrent: (design, current) => ({ ...design, current }),
-  schematic: ({ tank, pair, tail, current, mirrorRatio, ...capacitances }) =>
-    pairSchematic({
-      inductance: tank.inductance,
-      resistance: tankResistance(tank),
-      tankCapacitance: tank.capacitance,
-      pairWidth: pair.width,
-      tailWidth: tail.width,
-      mirrorWidth: tail.width / mirrorRatio,
-      referenceCurrent: current / mirrorRatio,
-      loadCapacitance: capacitances.loadCapacitance,
-      tailCapacitance: capacitances.tailCapacitance,
-      mirrorCapacitance: capacitances.mirrorCapacitance,
-    }),
-  amplitude: ({ current, resistance }) => 2 / Math.PI * current * resistance,
-  amplitudeFormula: {
-    name: "amplitude, hard switching",
-    formula: "A = \\frac{2}{\\pi} I R",
-    source:
-      "fundamental of a square wave of I/2; J. Rael, A. Abidi, Proc. CICC 2000, 569 (from memory)",
-  },
-  loopGain: ({ transconductance, resistance }) => transconductance * resistance / 2,
-  loopGainFormula: {
-    name: "startup loop gain",
-    formula: "a = \\frac{g_m R}{2}",
-    source: "A. Hajimiri, T. Lee, IEEE J. Solid-State Circuits 34 (1999) 717 (from memory)",
-  },
-};
-
-/** Parallel loss resistance of a plain tank, Q w L at the frequency of its quality factor [ohm]. */
-export function tankResistance({ inductance, quality, qualityFrequency }: TankDesign): number {
-  return quality * 2 * Math.PI * qualityFrequency * inductance;
+        resistance: tankResistance(tank),
+        tankCapacitance: tank.capacitance,
+        pairWidth: pair.width,
+        loadCapacitance: capacitances.loadCapacitance,
+        foot: {
+          kind: "mirror",
+          tailWidth: tail.width,
+          mirrorWidth: tail.width / mirrorRatio,
+          referenceCurrent: current / mirrorRatio,
+          tailCapacitance: capacitances.tailCapacitance,
+          mirrorCapacitance: capacitances.mirrorCapacitance,
+          ...(tailFilter
+            ? {
+              filterInductance: tailFilter.inductance,
+              filterCapacitance: tailFilter.capacitance,
+            }
+            : {}),
+        },
+      });
+      return kind === "n" ? upright : upsideDown(upright);
+    },
+    amplitude: switchingAmplitude,
+    amplitudeFormula: SWITCHING_AMPLITUDE,
+    loopGain: pairLoopGain,
+    loopGainFormula: PAIR_LOOP_GAIN,
+  };
 }
 
-function optionalCapacitors(
-  list: readonly (readonly [string, string, number | undefined])[],
+function filterElements(
+  { inductance, quality, capacitance }: TailFilter,
+  { rail, design, shop: { condition: { temperature }, passives } }: {
+    readonly rail: string;
+    readonly design: CrossCoupledPairDesign;
+    readonly shop: ReturnType<typeof workshop>;
+  },
 ): CircuitElement[] {
-  return list.flatMap(([name, node, capacitance]): CircuitElement[] =>
-    capacitance === undefined || capacitance === 0
-      ? []
-      : [{ kind: "capacitor", name, nodes: [node, GROUND], capacitance }]
-  );
-}
-
-function watchedVoltages(): BuiltOscillator["watched"] {
-  const of = (device: string, nodes: { drain: string; gate: string; source: string }) => [
-    { device, quantity: "gate-source", plus: nodes.gate, minus: nodes.source } as const,
-    { device, quantity: "gate-drain", plus: nodes.gate, minus: nodes.drain } as const,
-    { device, quantity: "drain-source", plus: nodes.drain, minus: nodes.source } as const,
-    { device, quantity: "drain-bulk", plus: nodes.drain, minus: GROUND } as const,
-  ];
+  demandPositive("build the tail filter", {
+    inductance: [inductance, "H"],
+    quality: [quality, ""],
+  });
+  const reactance = 2 * Math.PI * 2 * design.tank.qualityFrequency * inductance;
   return [
-    ...of("pair plus", { drain: "plus", gate: "minus", source: "tail" }),
-    ...of("pair minus", { drain: "minus", gate: "plus", source: "tail" }),
-    ...of("tail", { drain: "tail", gate: "mirror", source: GROUND }),
+    ...capacitors([["tail filter capacitor", ["common", rail], capacitance]]),
+    {
+      kind: "inductor",
+      name: "tail filter coil",
+      windings: [{
+        nodes: ["common", "tail"],
+        inductance,
+        seriesResistance: reactance / quality * passives.metalResistance,
+      }],
+      coupling: 0,
+      temperature,
+    },
   ];
 }

@@ -23,3 +23,18 @@ export {
   logarithmicCurrents,
 } from "./bias.ts";
 export { type HandComparison, handComparisons, transistorAt } from "./hand_values.ts";
+export {
+  type BindingLimit,
+  checkInductance,
+  type FamilyMember,
+  type InductanceAnswer,
+  type InductanceCheck,
+  type InductanceColumn,
+  inductanceColumn,
+  type InductanceOptions,
+  type InductorFamily,
+  type NoInductance,
+  smallestInductance,
+  type TrimmedTank,
+  trimTank,
+} from "./inductance.ts";

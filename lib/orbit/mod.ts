@@ -28,3 +28,11 @@ export {
 export { type PhaseSensitivity, phaseSensitivity } from "./phase_sensitivity.ts";
 export { type InputSensitivity, inputSensitivity } from "./input_sensitivity.ts";
 export { type PhaseDiffusion, phaseDiffusion, type SourceDiffusion } from "./phase_diffusion.ts";
+export {
+  type ModulationTransfer,
+  type OffsetTransfer,
+  type PhaseTransfer,
+  phaseTransfer,
+  type PhaseTransferOptions,
+  type SourceNoise,
+} from "./phase_transfer.ts";

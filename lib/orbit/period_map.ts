@@ -495,43 +495,142 @@ export class PeriodMap {
 
   /** One backward sweep of the adjoint from `nodes` at the end of the period. */
   #sweepBack(nodes: Float64Array, stages: Float64Array, stageWeights: Float64Array): void {
-    const { steps, method } = this;
-    const { n, r } = this.coordinates;
-    const s = method.stages;
-    const size = s * n;
+    const { steps } = this;
+    const { r } = this.coordinates;
+    const s = this.method.stages;
     const work = this.#stageWork;
     for (let step = steps - 1; step >= 0; step--) {
-      const h = this.#stepLength(step);
-      const end = (step + 1) * r;
+      const w = nodes.subarray((step + 1) * r, (step + 2) * r);
       work.fill(0);
+      this.#solveBack(step, w, work);
+      this.#readStages(step, { w, work, stages });
       for (let row = 0; row < r; row++) {
-        const outputAt = (step * r + row) * size;
-        const weight = nodes[end + row]!;
-        for (let k = 0; k < size; k++) work[k]! += this.#output[outputAt + k]! * weight;
-      }
-      solveTransposed(this.#J, this.#pivots, work, {
-        n: size,
-        at: step * size * size,
-        pivotsAt: step * size,
-      });
-      for (let row = 0; row < r; row++) {
-        let value = nodes[end + row]!;
-        for (let i = 0; i < s; i++) value += work[row * s + i]!;
+        let value = w[row]!;
+        for (let i = 0; i < s; i++) {
+          value += work[row * s + i]!;
+          stageWeights[(step * s + i) * r + row] = work[row * s + i]!;
+        }
         nodes[step * r + row] = value;
       }
+    }
+  }
+
+  /**
+   * The adjoint of the period map for a response that turns by `turn` per period, from the factors of
+   * the last full pass: how a functional of the stage states answers to a rate injected at each
+   * stage.
+   *
+   * @param functional real and imaginary weights of the scaled stage states, shape (steps, s, n) each
+   * @param turn angle per period [rad]
+   * @param flow scaled flow at the first mesh point, shape (r,), and `sensitivity` its adjoint with
+   * sensitivity . flow = 1: along it the multiplier is put to exactly 1
+   * @returns real and imaginary answers per scaled row, shape (steps, s, n) each, charge rows first
+   */
+  turningAdjoint(
+    functional: { readonly re: Float64Array; readonly im: Float64Array },
+    { turn, flow, sensitivity }: {
+      turn: number;
+      flow: Float64Array;
+      sensitivity: Float64Array;
+    },
+  ): { re: Float64Array; im: Float64Array } {
+    const { r } = this.coordinates;
+    const { re, im } = functional;
+    const zero = new Float64Array(r);
+    const direct = { re: this.#answer(re, zero), im: this.#answer(im, zero) };
+    // (exp(i turn) - M^T) end = direct, with M's multiplier along the flow corrected to 1.
+    let unit = 0;
+    for (let i = 0; i < r; i++) {
+      for (let j = 0; j < r; j++) {
+        unit += sensitivity[i]! * this.monodromy[i * r + j]! * flow[j]!;
+      }
+    }
+    const size = 2 * r;
+    const matrix = new Float64Array(size * size);
+    const end = new Float64Array(size);
+    for (let i = 0; i < r; i++) {
+      end[i] = direct.re.start[i]!;
+      end[r + i] = direct.im.start[i]!;
+      for (let j = 0; j < r; j++) {
+        const own = this.monodromy[j * r + i]! + (1 - unit) * flow[j]! * sensitivity[i]!;
+        matrix[i * size + j] = -own;
+        matrix[(r + i) * size + r + j] = -own;
+      }
+      matrix[i * size + i]! += Math.cos(turn);
+      matrix[(r + i) * size + r + i]! += Math.cos(turn);
+      matrix[i * size + r + i]! -= Math.sin(turn);
+      matrix[(r + i) * size + i]! += Math.sin(turn);
+    }
+    const pivots = new Int32Array(size);
+    factor(matrix, pivots, { n: size });
+    solve(matrix, pivots, end, { n: size });
+    return {
+      re: this.#answer(re, end.subarray(0, r)).stages,
+      im: this.#answer(im, end.subarray(r)).stages,
+    };
+  }
+
+  /** One backward sweep with a functional of the stage states and the answer to charges at the end. */
+  #answer(
+    functional: Float64Array,
+    end: Float64Array,
+  ): { start: Float64Array; stages: Float64Array } {
+    const { steps } = this;
+    const { n, r } = this.coordinates;
+    const s = this.method.stages;
+    const size = s * n;
+    const w = end.slice();
+    const stages = new Float64Array(steps * size);
+    const work = this.#stageWork;
+    for (let step = steps - 1; step >= 0; step--) {
       for (let j = 0; j < s; j++) {
-        const at = (step * s + j) * n;
-        for (let row = 0; row < r; row++) {
-          let value = nodes[end + row]!;
-          for (let i = 0; i < s; i++) {
-            value += method.matrix[i * s + j]! / method.weights[j]! * work[row * s + i]!;
-          }
-          stages[at + row] = value;
-          stageWeights[(step * s + j) * r + row] = work[row * s + j]!;
+        for (let k = 0; k < n; k++) work[k * s + j] = functional[(step * s + j) * n + k]!;
+      }
+      this.#solveBack(step, w, work);
+      this.#readStages(step, { w, work, stages });
+      for (let row = 0; row < r; row++) {
+        for (let i = 0; i < s; i++) w[row]! += work[row * s + i]!;
+      }
+    }
+    return { start: w, stages };
+  }
+
+  /** Adds what the end of a step answers to the stages in `work` and solves the transposed stage matrix. */
+  #solveBack(step: number, w: Float64Array, work: Float64Array): void {
+    const { n, r } = this.coordinates;
+    const size = this.method.stages * n;
+    const output = this.#output;
+    for (let row = 0; row < r; row++) {
+      const outputAt = (step * r + row) * size;
+      const weight = w[row]!;
+      for (let k = 0; k < size; k++) work[k]! += output[outputAt + k]! * weight;
+    }
+    solveTransposed(this.#J, this.#pivots, work, {
+      n: size,
+      at: step * size * size,
+      pivotsAt: step * size,
+    });
+  }
+
+  /** Answers per unit of rate injected at the stages of a step. */
+  #readStages(
+    step: number,
+    { w, work, stages }: { w: Float64Array; work: Float64Array; stages: Float64Array },
+  ): void {
+    const { n, r } = this.coordinates;
+    const { stages: s, matrix, weights } = this.method;
+    const h = this.#stepLength(step);
+    for (let j = 0; j < s; j++) {
+      const at = (step * s + j) * n;
+      for (let row = 0; row < r; row++) {
+        let value = w[row]!;
+        for (let i = 0; i < s; i++) {
+          value += matrix[i * s + j]! / weights[j]! * work[row * s + i]!;
         }
-        for (let row = r; row < n; row++) {
-          stages[at + row] = work[row * s + j]! / (h * method.weights[j]!);
-        }
+        stages[at + row] = value;
+      }
+      for (let row = r; row < n; row++) {
+        stages[at + row] = work[row * s + j]! / (h * weights[j]!);
       }
     }
   }

@@ -41,8 +41,7 @@ export interface PhaseDiffusion {
  * Phase diffusion per source and in total.
  *
  * The single-sideband phase noise in the 1/f^2 region is f0^2 total / f^2. How a source acts at offsets
- * comparable with the slow poles of the circuit is the subject of the offset-dependent transfer, for
- * which the name `phaseTransfer` is reserved.
+ * comparable with the slow poles of the circuit is told by `phaseTransfer`, whose limit this is.
  *
  * @param orbit the orbit, or its sensitivity where that is at hand
  * @param sources noise sources, one-sided amplitudes

@@ -104,8 +104,12 @@ function algebraicRows(
   for (let k = r; k < n; k++) rows[k] = -z[k]!;
 }
 
-/** Scaled sensitivities of the reordered rows at `from[at...]` to those of the system's own rows. */
-function toRows(orbit: Orbit, from: Float64Array, into: Float64Array, at: number): void {
+/**
+ * Scaled sensitivities of the reordered rows at `from[at...]` to those of the system's own rows.
+ *
+ * @internal
+ */
+export function toRows(orbit: Orbit, from: Float64Array, into: Float64Array, at: number): void {
   const { n, r, rows, rowScale, mix } = orbit.discrete.coordinates;
   for (let i = 0; i < n; i++) into[at + rows[i]!] = from[at + i]! * rowScale[i]!;
   for (let k = r; k < n; k++) {

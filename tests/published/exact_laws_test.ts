@@ -36,8 +36,9 @@ function ladder(
   { start, counts }: { start: Float64Array; counts: readonly number[] },
 ): { fine: Orbit; rungs: readonly Orbit[] } {
   const fine = orbitOf(system, { start, tolerance: 1e-12 });
+  // With the steps held, the tolerance is what the discrete equations are solved to.
   const rungs = counts.map((steps) =>
-    orbitOf(system, { start: fine.at(0), period: fine.period, steps })
+    orbitOf(system, { start: fine.at(0), period: fine.period, steps, tolerance: 1e-14 })
   );
   return { fine, rungs };
 }

@@ -194,17 +194,21 @@ Deno.test("pair: doubling the current below the knee lowers the noise by about 6
 });
 
 Deno.test("pair: Leeson's formula with the computed amplitude and noise factor gives the computed noise", () => {
-  const { amplitude, factor, figures } = partsOf(DESIGN, NOMINAL);
-  const angular = 2 * Math.PI * figures.frequency;
-  const hand = leesonPhaseNoise({
-    thermalEnergy: BOLTZMANN * NOMINAL.temperature,
-    resistance: RESISTANCE,
-    amplitude,
-    quality: RESISTANCE / (angular * DESIGN.tank.inductance),
-    noiseFactor: factor,
-    frequency: figures.frequency,
-    offset: OFFSET,
+  const excess = [0.4e-3, 1.5e-3, 3.5e-3, 8e-3].map((current) => {
+    const { amplitude, factor, figures } = partsOf({ ...DESIGN, current }, NOMINAL);
+    const angular = 2 * Math.PI * figures.frequency;
+    const hand = leesonPhaseNoise({
+      thermalEnergy: BOLTZMANN * NOMINAL.temperature,
+      resistance: RESISTANCE,
+      amplitude,
+      quality: RESISTANCE / (angular * DESIGN.tank.inductance),
+      noiseFactor: factor,
+      frequency: figures.frequency,
+      offset: OFFSET,
+    });
+    return figures.phaseNoise - hand;
   });
-  // The wave is not the formula's sinusoid, and part of the swing's energy is in the devices' charges.
-  assertClose(figures.phaseNoise, hand, { rtol: 0, atol: 0.15, what: "dBc/Hz" });
+  // A sinusoid has least; amplitude turned into phase by the devices' capacitances adds to it: found 0.15, 0.02, 0.48
+  // and 0.21 dB.
+  for (const value of excess) assert(value > 0 && value < 0.6, excess.join(", "));
 });

@@ -126,6 +126,7 @@ export function contract<Design>({ topology, design, sides }: ContractCase<Desig
       assert(equilibrium.status === "found");
       assert(equilibrium.poles[0]!.re > 0 && equilibrium.poles[0]!.im > 0);
       // As many multipliers as poles: the rank of C.
+      assertEquals(orbit.multipliers.length, rankOfCharges(circuit, orbit.at(0)));
       assertEquals(orbit.multipliers.length, equilibrium.poles.length);
       const [first, ...others] = orbit.multipliers;
       assertClose([first!.re, first!.im], [1, 0], { rtol: 0, atol: 1e-8 });

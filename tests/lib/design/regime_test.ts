@@ -6,6 +6,14 @@ import {
   regimeOf,
 } from "../../../lib/design/regime.ts";
 
+/** Exponents that must all be there. */
+function exponentsOf(x: readonly number[], y: readonly number[]): number[] {
+  return localExponents(x, y).map((exponent) => {
+    assert(exponent !== undefined, "an exponent is missing");
+    return exponent;
+  });
+}
+
 Deno.test("regimeOf: the stated rule, edge by edge", () => {
   assertEquals(KNEE_EXPONENT, 0.5);
   const of = (exponent: number | undefined, starts = true, kneeExponent?: number) =>
@@ -30,22 +38,22 @@ Deno.test("localExponents: exact on power laws, uneven points and all", () => {
   const x = [1e-4, 1.3e-4, 2e-4, 5e-4, 5.5e-4, 4e-3];
   for (const power of [-2, 0.5, 1, 3]) {
     const y = x.map((value) => 7e3 * value ** power);
-    assertClose(localExponents(x, y), x.map(() => power), { rtol: 1e-11, atol: 0 });
+    assertClose(exponentsOf(x, y), x.map(() => power), { rtol: 1e-11, atol: 0 });
   }
-  assertClose(localExponents(x, x.map(() => 2)), x.map(() => 0), { rtol: 0, atol: 1e-11 });
+  assertClose(exponentsOf(x, x.map(() => 2)), x.map(() => 0), { rtol: 0, atol: 1e-11 });
 });
 
 Deno.test("localExponents: exact on a parabola in the logarithms, ends included", () => {
   const x = [1, 2, 3, 7, 8, 20];
   const y = x.map((value) => Math.exp(1.5 * Math.log(value) - 0.4 * Math.log(value) ** 2));
   const slopes = x.map((value) => 1.5 - 0.8 * Math.log(value));
-  assertClose(localExponents(x, y), slopes, { rtol: 0, atol: 1e-12 });
+  assertClose(exponentsOf(x, y), slopes, { rtol: 0, atol: 1e-12 });
 });
 
 Deno.test("localExponents: second order on a curve that is neither", () => {
   const errors = [10, 20, 40].map((count) => {
     const x = Array.from({ length: count + 1 }, (_, k) => 10 ** (k / count));
-    const found = localExponents(x, x.map((value) => Math.tanh(value / 3)));
+    const found = exponentsOf(x, x.map((value) => Math.tanh(value / 3)));
     const exact = x.map((value) => value / 3 / Math.sinh(value / 3) / Math.cosh(value / 3));
     return Math.max(...found.map((value, k) => Math.abs(value - exact[k]!)).slice(1, -1));
   });
@@ -53,9 +61,9 @@ Deno.test("localExponents: second order on a curve that is neither", () => {
   assert(Math.abs(order - 2) < 0.3, `order ${order}, errors ${errors.join(", ")}`);
 });
 
-Deno.test("localExponents: two points are too few for a slope with curvature", () => {
-  const found = localExponents([1, 2], [1, 2]);
-  assertEquals(found.length, 2);
+Deno.test("localExponents: the chord of two points, none of one", () => {
+  assertClose(exponentsOf([1, 4], [3, 12]), [1, 1], { rtol: 1e-14, atol: 0 });
+  assertEquals(localExponents([1], [2]), [undefined]);
   assertEquals(localExponents([], []), []);
 });
 
@@ -82,5 +90,5 @@ Deno.test("kneeCurrent: no answer where the sweep does not contain the knee", ()
   // It begins beyond: where the knee lies is not known.
   assertEquals(kneeCurrent([1, 2, 3], [0.4, 0.3, 0.2]), undefined);
   assertEquals(kneeCurrent([], []), undefined);
-  assertEquals(kneeCurrent([1, 2], [NaN, NaN]), undefined);
+  assertEquals(kneeCurrent([1, 2], [undefined, undefined]), undefined);
 });

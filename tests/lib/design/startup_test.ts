@@ -67,13 +67,13 @@ Deno.test("startup: of the real pair, gm R / 2 less the output conductance's par
   assert(found.status === "found");
   const { gm, gds } = transistorAt(oscillator, "pair plus", found.equilibrium.state);
   const resistance = 1 / oscillator.tank.conductance(0);
-  // Junction losses and the gate's delay leave the rest: found 1e-6.
-  assertClose(found.loopGain, (gm - gds) * resistance / 2, { rtol: 1e-5, atol: 0 });
-  // Growth (a - 1) G / (2 C) with the capacitance the frequency says.
+  // Quasi-static transistors and no series resistance: nothing else is in the port's conductance.
+  assertClose(found.loopGain, (gm - gds) * resistance / 2, { rtol: 1e-12, atol: 0 });
+  // Growth (a - 1) G / (2 C) with the capacitance the frequency says: a parallel tank in every respect.
   const angular = 2 * Math.PI * found.frequency;
   const capacitance = 1 / (angular ** 2 * DESIGN.tank.inductance);
   const rate = (found.loopGain - 1) / (2 * resistance * capacitance);
-  assertClose(found.growthRate, rate, { rtol: 0.02, atol: 0, what: "growth rate" });
+  assertClose(found.growthRate, rate, { rtol: 1e-12, atol: 0, what: "growth rate" });
   assertEquals(found.otherUnstable, []);
   assertEquals(found.poles.filter(({ name }) => name === "tank").length, 2);
   assert(found.poles.some(({ name }) => name === "common mode"), "no common-mode pole");

@@ -61,7 +61,7 @@ Deno.test("Orbit.phasor() gives peak phasors: of a circle, of its square, and th
 
 Deno.test("Orbit.phasor() keeps Parseval's sum: half the squares of the peaks is the mean square", () => {
   const { system, start } = vanDerPol(2);
-  const orbit = orbitOf(system, { start, tolerance: 1e-12 });
+  const orbit = orbitOf(system, { start, tolerance: 1e-12, stages: 4, steps: 400 });
   let sum = orbit.mean((x) => x[0]!) ** 2;
   for (let harmonic = 1; harmonic < 60; harmonic++) {
     const { re, im } = orbit.phasor((x) => x[0]!, { harmonic });

@@ -1,0 +1,80 @@
+/**
+ * What the Colpitts oscillators share.
+ *
+ * @module
+ */
+import { demandPositive } from "./_topology_parts.ts";
+import type { AmplitudeValues, HandValue, LoopGainValues } from "./topology.ts";
+
+/** The capacitive divider of a Colpitts oscillator. */
+export interface Divider {
+  /** C1, from the drain to the source [F]. */
+  readonly first: number;
+  /** C2, from the source to ground [F]. */
+  readonly second: number;
+}
+
+/** Fraction n of the tank voltage at the source, C1 / (C1 + C2) [1]. */
+export function tapOf({ first, second }: Divider): number {
+  return first / (first + second);
+}
+
+/** C1 and C2 in series [F]. */
+export function seriesCapacitance({ first, second }: Divider): number {
+  return first * second / (first + second);
+}
+
+/** @throws RangeError for a tap that is missing or not between 0 and 1 */
+export function demandTap(tap: number | undefined): number {
+  if (!(tap !== undefined && tap > 0 && tap < 1)) {
+    throw new RangeError(
+      `Cannot use the hand formula of a Colpitts oscillator: tap must be between 0 and 1, got ${tap}`,
+    );
+  }
+  return tap;
+}
+
+/** @throws RangeError for a capacitance of the divider that is not positive */
+export function demandDivider({ first, second }: Divider): void {
+  demandPositive("build the Colpitts oscillator", {
+    "first capacitance of the divider": [first, "F"],
+    "second capacitance of the divider": [second, "F"],
+  });
+}
+
+/** gms n (1 - n) R for one side of resistance R. */
+export function sideLoopGain({ transconductance, resistance, tap }: LoopGainValues): number {
+  const n = demandTap(tap);
+  return transconductance * n * (1 - n) * resistance;
+}
+
+export const SIDE_LOOP_GAIN: HandValue = {
+  name: "startup loop gain",
+  formula: "a = g_{ms} n (1 - n) R",
+  source: "common gate, loop opened at the source; T. Lee, The Design of CMOS RFIC (from memory)",
+  holds: "the source's conductance is small against the divider's susceptance; else divide by " +
+    "1 + (g_ms / (w (C1 + C2)))^2",
+};
+
+/** 2 I R (1 - n) for one side of resistance R and mean current I. */
+export function sideAmplitude({ current, resistance, tap }: AmplitudeValues): number {
+  return 2 * current * resistance * (1 - demandTap(tap));
+}
+
+/**
+ * Startup loop gain of a common-gate Colpitts oscillator without output conductance: the hand value
+ * g = gms n (1 - n) R over y = (1 + sqrt(1 + 4 g^2 / Q^2)) / 2.
+ *
+ * y is the square of the startup frequency over that of the coil and the divider, which the source's
+ * conductance raises by taking part of C2 out.
+ *
+ * @param handValue g [1]
+ * @param quality Q = R sqrt(C/L) with C the divider's series capacitance alone across the coil [1]
+ * @returns [1]
+ */
+export function loadedLoopGain(
+  handValue: number,
+  { quality }: { readonly quality: number },
+): number {
+  return 2 * handValue / (1 + Math.sqrt(1 + 4 * (handValue / quality) ** 2));
+}
