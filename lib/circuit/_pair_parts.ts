@@ -10,7 +10,6 @@ import {
   capacitors,
   coreOf,
   currentLeaving,
-  differentialKick,
   differentialTank,
   SUPPLY,
   tappedTank,
@@ -91,12 +90,6 @@ export function buildPair(
     }),
     supplyCurrent: currentLeaving(circuit, SUPPLY),
     guess: circuit.stateAt(potentials),
-    kick: differentialKick(circuit, {
-      potentials,
-      supply,
-      inductance: tank.inductance,
-      capacitance: tank.capacitance + loadCapacitance / 2,
-    }),
     core: coreOf(circuit, "pair plus", { of: "gm" }),
     watched: watchedTransistors(circuit, ["pair plus", "pair minus", ...foot.watched]),
     patterns: [

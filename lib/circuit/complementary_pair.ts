@@ -4,7 +4,6 @@ import {
   capacitors,
   currentLeaving,
   demandPositive,
-  differentialKick,
   differentialTank,
   mirroredSources,
   operatingPointIn,
@@ -108,12 +107,6 @@ export const complementaryPair: Topology<ComplementaryPairDesign> = {
       tank: differentialTank({ tank, resistance }),
       supplyCurrent: currentLeaving(circuit, SUPPLY),
       guess: circuit.stateAt(potentials),
-      kick: differentialKick(circuit, {
-        potentials,
-        supply,
-        inductance: tank.inductance,
-        capacitance: tank.capacitance + loadCapacitance / 2,
-      }),
       core: (state) => {
         const lower = operatingPointIn(circuit, "pair plus", state);
         const upper = operatingPointIn(circuit, "upper pair plus", state);

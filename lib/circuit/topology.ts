@@ -75,8 +75,8 @@ export interface BuiltOscillator {
   /** Names of the devices by part: what makes up "tank", "pair" (the core), "tail", "mirror". */
   readonly parts: Readonly<Record<string, readonly string[]>>;
   /**
-   * A state well away from the equilibrium, shape (n,), and about the period [s]: where an orbit may
-   * still be found when the equilibrium is stable.
+   * A state well away from the equilibrium, shape (n,), and about the period [s], for topologies that
+   * may have an orbit although their equilibrium is stable.
    */
   readonly kick?: { readonly state: Float64Array; readonly period: number };
   /**

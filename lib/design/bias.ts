@@ -10,6 +10,7 @@ import { extrapolateOrbits } from "../orbit/orbit_guess.ts";
 import { Orbit } from "../orbit/orbit.ts";
 import { type OperatingFigures, operatingFigures } from "./operating_figures.ts";
 import { KNEE_EXPONENT, kneeCurrent, localExponents, type Regime, regimeOf } from "./regime.ts";
+import { oscillation } from "./oscillation.ts";
 import { type Startup, startup } from "./startup.ts";
 
 /** Currents between two points of the sweep tried when one does not follow from the other. */
@@ -225,7 +226,7 @@ function fromEquilibrium(oscillator: BuiltOscillator, current: number): Solved {
     return { current, oscillator, orbit: undefined, reason: started.reason };
   }
   const { starts } = started;
-  const result = findOrbit(oscillator.circuit.system, { start: started.equilibrium });
+  const result = oscillation(oscillator, { started });
   return result instanceof Orbit
     ? { current, oscillator, orbit: result, starts }
     : { current, oscillator, orbit: undefined, starts, reason: result.reason };

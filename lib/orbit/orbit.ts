@@ -131,7 +131,11 @@ export class Orbit {
     return this.#moduli().map(multiplierValue);
   }
 
-  /** Exponents [1/s]: logarithms of the multipliers over the period, accurate also where a multiplier underflows. */
+  /**
+   * Exponents [1/s]: logarithms of the multipliers over the period, also where a multiplier underflows.
+   * They are those of the discrete map: a mode that dies within one step is seen to die only as fast
+   * as the step resolves, which a tighter tolerance mends.
+   */
   get exponents(): Complex[] {
     return this.#moduli().map(({ logModulus, argument }) => ({
       re: logModulus / this.period,

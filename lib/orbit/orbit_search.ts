@@ -15,10 +15,12 @@ const STALLED_PASSES = 5;
 /** Longest Newton update of a scaled state. */
 const NEWTON_BOUND = 0.5;
 /**
- * A full pass whose update is below this multiple of the tolerance ends the iteration: it has
- * linearised at the orbit, and its update leaves the square of itself.
+ * A full pass whose update is below this multiple of the tolerance may end the iteration: it has
+ * linearised near the orbit, and its update leaves the square of itself.
  */
 const LINEARISED_WITHIN = 10;
+/** Below this tolerance the iteration goes on to rounding, so that the adjoint is that of the orbit. */
+const TIGHT = 1e-9;
 /** Rounding floor of an update. */
 const ROUNDING = 2e-13;
 /** Refinements of the mesh before giving up. */
@@ -144,7 +146,8 @@ export class OrbitSearch {
     }
     const map = this.#map;
     map.load(begin, this.#coordinates);
-    const target = Math.max(ROUNDING, LINEARISED_WITHIN * tolerance);
+    const near = LINEARISED_WITHIN * tolerance;
+    const target = tolerance < TIGHT ? ROUNDING : near;
     this.history = [];
     let reuse = false;
     let smallest = Infinity;
@@ -169,7 +172,11 @@ export class OrbitSearch {
       const size = Math.max(update.state, update.period);
       this.history.push(size);
       if (!(size < Infinity && map.period > 0)) break;
-      if (!reuse && size < target) return this.#finish(map, residual);
+      // An update that no longer shrinks is rounding, which a stiff system amplifies.
+      const shrinks = size < smallest / 2;
+      if (!reuse && (size < target || (size < near && !shrinks))) {
+        return this.#finish(map, residual);
+      }
       stalled = size < smallest ? 0 : stalled + 1;
       if (stalled >= STALLED_PASSES) break;
       smallest = Math.min(smallest, size);

@@ -1,6 +1,7 @@
 import { assert, assertClose, assertThrows } from "../../assert.ts";
 import { assemble } from "../../../lib/circuit/circuit.ts";
-import { crossCoupledPair, tankResistance } from "../../../lib/circuit/cross_coupled_pair.ts";
+import { crossCoupledPair } from "../../../lib/circuit/cross_coupled_pair.ts";
+import { tankResistance } from "../../../lib/circuit/tank_resistance.ts";
 import { resolvePassives } from "../../../lib/device/resolve_passives.ts";
 import { findEquilibrium, polesAt } from "../../../lib/orbit/equilibrium.ts";
 import { findOrbit } from "../../../lib/orbit/find_orbit.ts";
@@ -14,11 +15,6 @@ import { NOMINAL, PAIR_DESIGN } from "./_examples.ts";
 const card = illustrativeCard();
 const build = (changes = {}, condition = NOMINAL) =>
   crossCoupledPair.build({ ...PAIR_DESIGN, ...changes }, { card, condition });
-
-Deno.test("tankResistance() is Q w L", () => {
-  const { tank } = PAIR_DESIGN;
-  assertClose(tankResistance(tank), 12 * 2 * Math.PI * 2.4e9 * 1.2e-9, { rtol: 1e-14, atol: 0 });
-});
 
 Deno.test("crossCoupledPair: the bare tank has the inductance, capacitance and loss asked for", () => {
   const { circuit, tank } = build();
