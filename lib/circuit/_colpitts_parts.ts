@@ -4,15 +4,7 @@
  * @module
  */
 import { demandPositive } from "./_topology_parts.ts";
-import type { AmplitudeValues, HandValue, LoopGainValues } from "./topology.ts";
-
-/** The capacitive divider of a Colpitts oscillator. */
-export interface Divider {
-  /** C1, from the drain to the source [F]. */
-  readonly first: number;
-  /** C2, from the source to ground [F]. */
-  readonly second: number;
-}
+import type { AmplitudeValues, Divider, HandValue, LoopGainValues } from "./topology.ts";
 
 /** Fraction n of the tank voltage at the source, C1 / (C1 + C2) [1]. */
 export function tapOf({ first, second }: Divider): number {
@@ -59,22 +51,4 @@ export const SIDE_LOOP_GAIN: HandValue = {
 /** 2 I R (1 - n) for one side of resistance R and mean current I. */
 export function sideAmplitude({ current, resistance, tap }: AmplitudeValues): number {
   return 2 * current * resistance * (1 - demandTap(tap));
-}
-
-/**
- * Startup loop gain of a common-gate Colpitts oscillator without output conductance: the hand value
- * g = gms n (1 - n) R over y = (1 + sqrt(1 + 4 g^2 / Q^2)) / 2.
- *
- * y is the square of the startup frequency over that of the coil and the divider, which the source's
- * conductance raises by taking part of C2 out.
- *
- * @param handValue g [1]
- * @param quality Q = R sqrt(C/L) with C the divider's series capacitance alone across the coil [1]
- * @returns [1]
- */
-export function loadedLoopGain(
-  handValue: number,
-  { quality }: { readonly quality: number },
-): number {
-  return 2 * handValue / (1 + Math.sqrt(1 + 4 * (handValue / quality) ** 2));
 }

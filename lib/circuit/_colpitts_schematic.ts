@@ -1,5 +1,4 @@
 import type { TransistorSize } from "../device/transistor_parameters.ts";
-import type { Divider } from "./_colpitts_parts.ts";
 import {
   groundedCapacitor,
   merged,
@@ -9,7 +8,7 @@ import {
   tailPiece,
 } from "./_schematic_parts.ts";
 import type { Schematic } from "./schematic.ts";
-import type { TankDesign } from "./topology.ts";
+import type { Divider, TankDesign } from "./topology.ts";
 
 /** Values written beside the symbols. */
 export interface ColpittsSchematicValues {

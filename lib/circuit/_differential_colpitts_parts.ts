@@ -4,7 +4,7 @@
  * @module
  */
 import type { TransistorSize } from "../device/transistor_parameters.ts";
-import { demandDivider, type Divider, seriesCapacitance, tapOf } from "./_colpitts_parts.ts";
+import { demandDivider, seriesCapacitance, tapOf } from "./_colpitts_parts.ts";
 import type { PairFoot } from "./_pair_parts.ts";
 import {
   capacitors,
@@ -20,7 +20,7 @@ import {
 import { assemble } from "./circuit.ts";
 import { GROUND } from "./element.ts";
 import { tankResistance } from "./tank_resistance.ts";
-import type { BuiltOscillator, TankDesign } from "./topology.ts";
+import type { BuiltOscillator, Divider, TankDesign } from "./topology.ts";
 
 /** The upper half on a foot; `foot.parts` names the tails, `foot.watched` what else is watched. */
 export function buildDifferentialColpitts(

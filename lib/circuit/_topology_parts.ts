@@ -263,7 +263,11 @@ export function coreOf(
 ): (state: Float64Array) => CoreValues {
   return (state) => {
     const point = operatingPointIn(circuit, device, state);
-    return { transconductance: point[of], gamma: point.noiseConductance / point[of] };
+    return {
+      transconductance: point[of],
+      gamma: point.noiseConductance / point[of],
+      outputConductance: point.gds,
+    };
   };
 }
 

@@ -1,7 +1,6 @@
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import {
   demandDivider,
-  type Divider,
   seriesCapacitance,
   SIDE_LOOP_GAIN,
   sideAmplitude,
@@ -22,7 +21,7 @@ import {
 import { assemble } from "./circuit.ts";
 import { GROUND } from "./element.ts";
 import { tankResistance } from "./tank_resistance.ts";
-import type { TankDesign, Topology } from "./topology.ts";
+import type { Divider, TankDesign, Topology } from "./topology.ts";
 
 /** Part of the supply that a kick deflects the drain by. */
 const KICK = 0.3;

@@ -114,6 +114,7 @@ export const complementaryPair: Topology<ComplementaryPairDesign> = {
         return {
           transconductance,
           gamma: (lower.noiseConductance + upper.noiseConductance) / transconductance,
+          outputConductance: lower.gds + upper.gds,
         };
       },
       watched: watchedTransistors(circuit, [

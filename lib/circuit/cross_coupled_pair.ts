@@ -14,8 +14,6 @@ import type { CircuitElement } from "./element.ts";
 import { tankResistance } from "./tank_resistance.ts";
 import type { ModePattern, TankDesign, Topology } from "./topology.ts";
 
-export { tankResistance } from "./tank_resistance.ts";
-
 /** Cross-coupled pair with a mirrored tail transistor. */
 export interface CrossCoupledPairDesign {
   readonly tank: TankDesign;

@@ -1,10 +1,10 @@
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import { buildDifferentialColpitts } from "./_differential_colpitts_parts.ts";
-import { type Divider, SIDE_LOOP_GAIN, sideAmplitude, sideLoopGain } from "./_colpitts_parts.ts";
+import { SIDE_LOOP_GAIN, sideAmplitude, sideLoopGain } from "./_colpitts_parts.ts";
 import { differentialColpittsSchematic } from "./_differential_colpitts_schematic.ts";
 import { demandPositive, mirroredSources, workshop } from "./_topology_parts.ts";
 import { tankResistance } from "./tank_resistance.ts";
-import type { TankDesign, Topology } from "./topology.ts";
+import type { Divider, TankDesign, Topology } from "./topology.ts";
 
 /** Differential Colpitts oscillator with a tail for each side. */
 export interface DifferentialColpittsDesign {

@@ -20,16 +20,35 @@ export {
 export { assemble, type Circuit } from "./circuit.ts";
 export type { Schematic, SchematicSymbol, SymbolKind } from "./schematic.ts";
 export type {
+  AmplitudeValues,
   BuiltOscillator,
   Condition,
+  CoreValues,
+  Divider,
   HandValue,
+  LoopGainValues,
   ModePattern,
   TankDesign,
   Topology,
   WatchedVoltage,
 } from "./topology.ts";
+export { tankResistance } from "./tank_resistance.ts";
 export {
   crossCoupledPair,
   type CrossCoupledPairDesign,
-  tankResistance,
+  crossCoupledPairP,
+  type TailFilter,
 } from "./cross_coupled_pair.ts";
+export {
+  resistorTailPair,
+  type ResistorTailPairDesign,
+  tailResistanceFor,
+} from "./resistor_tail_pair.ts";
+export { untailedPair, type UntailedPairDesign } from "./untailed_pair.ts";
+export { complementaryPair, type ComplementaryPairDesign } from "./complementary_pair.ts";
+export { classCPair, type ClassCPairDesign } from "./class_c_pair.ts";
+export { colpitts, type ColpittsDesign } from "./colpitts.ts";
+export { differentialColpitts, type DifferentialColpittsDesign } from "./differential_colpitts.ts";
+export { steeredColpitts, type SteeredColpittsDesign } from "./steered_colpitts.ts";
+export { loadedLoopGain } from "./loaded_loop_gain.ts";
+export { topologies, type TopologyName } from "./topologies.ts";

@@ -1,11 +1,11 @@
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import { buildDifferentialColpitts } from "./_differential_colpitts_parts.ts";
-import { demandTap, type Divider, SIDE_LOOP_GAIN, sideLoopGain } from "./_colpitts_parts.ts";
+import { demandTap, SIDE_LOOP_GAIN, sideLoopGain } from "./_colpitts_parts.ts";
 import { differentialColpittsSchematic } from "./_differential_colpitts_schematic.ts";
 import { capacitors, demandPositive, mirroredSources, workshop } from "./_topology_parts.ts";
 import { GROUND } from "./element.ts";
 import { tankResistance } from "./tank_resistance.ts";
-import type { TankDesign, Topology } from "./topology.ts";
+import type { Divider, TankDesign, Topology } from "./topology.ts";
 
 /** Differential Colpitts oscillator with one tail steered between the sources. */
 export interface SteeredColpittsDesign {

@@ -26,6 +26,14 @@ export interface TankDesign {
   readonly coupling?: number;
 }
 
+/** The capacitive divider of a Colpitts oscillator. */
+export interface Divider {
+  /** C1, from the drain to the source [F]. */
+  readonly first: number;
+  /** C2, from the source to ground [F]. */
+  readonly second: number;
+}
+
 /** A hand formula in words and symbols. */
 export interface HandValue {
   /** In words: "amplitude by (2/pi) I R". */
@@ -94,6 +102,8 @@ export interface CoreValues {
   readonly transconductance: number;
   /** Thermal noise conductance over that transconductance [1]. */
   readonly gamma: number;
+  /** Output conductance of the same devices, which loads the tank [S]. */
+  readonly outputConductance: number;
 }
 
 /** What a hand formula of the amplitude takes. */

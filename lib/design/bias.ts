@@ -9,8 +9,8 @@ import { findOrbit } from "../orbit/find_orbit.ts";
 import { extrapolateOrbits } from "../orbit/orbit_guess.ts";
 import { Orbit } from "../orbit/orbit.ts";
 import { type OperatingFigures, operatingFigures } from "./operating_figures.ts";
-import { KNEE_EXPONENT, kneeCurrent, localExponents, type Regime, regimeOf } from "./regime.ts";
 import { oscillation } from "./oscillation.ts";
+import { KNEE_EXPONENT, kneeCurrent, localExponents, type Regime, regimeOf } from "./regime.ts";
 import { type Startup, startup } from "./startup.ts";
 
 /** Currents between two points of the sweep tried when one does not follow from the other. */

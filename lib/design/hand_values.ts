@@ -3,9 +3,10 @@
  *
  * @module
  */
-import type { BuiltOscillator, Topology } from "../circuit/topology.ts";
+import { loadedLoopGain } from "../circuit/loaded_loop_gain.ts";
+import type { BuiltOscillator, CoreValues, Topology } from "../circuit/topology.ts";
 import type { TransistorOperatingPoint } from "../device/transistor_operating_point.ts";
-import { pairNoiseFactor } from "../noise/closed_forms.ts";
+import { noiseClosedForm } from "../noise/closed_forms.ts";
 import { leesonPhaseNoise } from "../noise/phase_noise.ts";
 import { BOLTZMANN } from "../quantity/constants.ts";
 import type { BiasPoint } from "./bias.ts";
@@ -14,6 +15,11 @@ import type { BiasPoint } from "./bias.ts";
 const HARD_SWITCHING = 2.5;
 /** Part of the noise from sources that the closed form leaves out, from which it does not hold. */
 const LEFT_OUT = 0.1;
+/** Parts whose noise the closed forms count. */
+const COUNTED: readonly string[] = ["tank", "pair", "tail"];
+/** Parts of the transconductance and of the loop gain from which a load counts. */
+const OUTPUT_LOADS = 0.08;
+const SOURCE_LOADS = 0.08;
 /** Exponent of the amplitude above which a point is well below the knee. */
 const BELOW_KNEE = 0.8;
 
@@ -66,17 +72,16 @@ export function handComparisons<Design>(
   const angular = 2 * Math.PI * figures.frequency;
   const resistance = 1 / oscillator.tank.conductance(angular);
   const state = startup.equilibrium.state;
-  const [pairName] = oscillator.parts["pair"] ?? [];
-  const [tailName] = oscillator.parts["tail"] ?? [];
-  if (pairName === undefined || tailName === undefined) return [];
-  const pair = transistorAt(oscillator, pairName, state);
-  const tail = transistorAt(oscillator, tailName, state);
-  const factor = pairNoiseFactor({
-    pairGamma: pair.noiseConductance / pair.gm,
-    tailGamma: tail.noiseConductance / tail.gm,
-    tailTransconductance: tail.gm,
+  const core = coreAt(oscillator, state);
+  if (!core) return [];
+  const tap = oscillator.tap === undefined ? {} : { tap: oscillator.tap };
+  const closedForm = noiseClosedForm(topology.name);
+  const factor = closedForm?.factor({
+    coreGamma: core.gamma,
+    tailNoiseConductance: tailNoiseConductance(oscillator, state),
     resistance,
     loopGain: startup.loopGain,
+    ...tap,
   });
   const switching = startup.loopGain >= HARD_SWITCHING ? [] : [
     `the loop gain ${
@@ -88,18 +93,51 @@ export function handComparisons<Design>(
       (amplitudeExponent ?? NaN).toFixed(2)
     }, below ${BELOW_KNEE}: the point is near or past the knee`,
   ];
-  const named = new Set(["tank", "pair", "tail"].flatMap((part) => oscillator.parts[part] ?? []));
+  const named = new Set(COUNTED.flatMap((part) => oscillator.parts[part] ?? []));
   const leftOut = figures.shares.reduce(
     (sum, { device, share }) => named.has(device) ? sum : sum + share,
     0,
   );
+  const left = Object.keys(oscillator.parts).filter((part) => !COUNTED.includes(part)).join(", ");
   const complete = leftOut < LEFT_OUT ? [] : [
-    `${
-      (100 * leftOut).toFixed(0)
-    } % of the noise comes from the mirror, which the formula leaves out`,
+    `${(100 * leftOut).toFixed(0)} % of the noise comes from ${left}, which the formula leaves out`,
   ];
-  const gain = topology.loopGain({ transconductance: pair.gm, resistance });
-  const amplitude = topology.amplitude({ current: point.current, resistance });
+  const gain = topology.loopGain({ ...core, resistance, ...tap });
+  const amplitude = topology.amplitude({
+    current: point.current,
+    resistance,
+    supply: oscillator.circuit.potential(oscillator.supplyNode, state),
+    ...tap,
+  });
+  const outputs = core.outputConductance / core.transconductance;
+  const unloaded = outputs < OUTPUT_LOADS ? [] : [
+    `the core's output conductance is ${(100 * outputs).toFixed(0)} % of its transconductance`,
+  ];
+  const reactance = 2 * Math.PI * startup.frequency * oscillator.tank.inductance;
+  const loaded = loadedLoopGain(gain, { quality: resistance / reactance });
+  const lightSource = oscillator.tap === undefined || loaded > gain * (1 - SOURCE_LOADS) ? [] : [
+    `the source's conductance loads the divider, which leaves about ${loaded.toFixed(2)}`,
+  ];
+  const limits = [...switching, ...belowKnee];
+  const small = [
+    compare({
+      ...topology.loopGainFormula,
+      unit: "1",
+      hand: gain,
+      computed: startup.loopGain,
+      allowance: 0.1,
+      broken: [...unloaded, ...lightSource],
+    }),
+    compare({
+      ...topology.amplitudeFormula,
+      unit: "V",
+      hand: amplitude,
+      computed: figures.amplitude,
+      allowance: 0.1,
+      broken: limits,
+    }),
+  ];
+  if (!closedForm || !factor) return small;
   const noise = leesonPhaseNoise({
     thermalEnergy: BOLTZMANN * temperature,
     resistance,
@@ -110,31 +148,16 @@ export function handComparisons<Design>(
     offset,
   });
   return [
-    compare({
-      ...topology.loopGainFormula,
-      unit: "1",
-      hand: gain,
-      computed: startup.loopGain,
-      allowance: 0.1,
-      broken: [],
-    }),
-    compare({
-      ...topology.amplitudeFormula,
-      unit: "V",
-      hand: amplitude,
-      computed: figures.amplitude,
-      allowance: 0.1,
-      broken: [...switching, ...belowKnee],
-    }),
+    ...small,
     compare({
       name: "noise factor",
-      formula: "F = 1 + \\gamma + \\gamma_t g_{m,t} \\tfrac{R}{4} (1 - \\tfrac{1}{a})",
-      source: "J. Bank (2006); D. Murphy, J. Rael, A. Abidi (2010), from memory; tail term derived",
+      formula: closedForm.formula,
+      source: closedForm.source,
       unit: "1",
       hand: factor.total,
       computed: figures.noiseFactor,
       allowance: 0.25,
-      broken: [...switching, ...belowKnee, ...complete],
+      broken: [...limits, ...complete],
     }),
     compare({
       name: "phase noise, with the computed amplitude",
@@ -144,9 +167,27 @@ export function handComparisons<Design>(
       hand: noise,
       computed: figures.phaseNoise,
       allowance: 1,
-      broken: [...switching, ...belowKnee, ...complete],
+      broken: [...limits, ...complete],
     }),
   ];
+}
+
+/** The core's values, from the first transistor of the pair where the topology has no rule of its own. */
+function coreAt(oscillator: BuiltOscillator, state: Float64Array): CoreValues | undefined {
+  if (oscillator.core) return oscillator.core(state);
+  const [name] = oscillator.parts["pair"] ?? [];
+  if (name === undefined) return undefined;
+  const { gm, gds, noiseConductance } = transistorAt(oscillator, name, state);
+  return { transconductance: gm, gamma: noiseConductance / gm, outputConductance: gds };
+}
+
+/** Noise conductance of the first tail: a transistor's or a resistor's; 0 without one [S]. */
+function tailNoiseConductance(oscillator: BuiltOscillator, state: Float64Array): number {
+  const [name] = oscillator.parts["tail"] ?? [];
+  if (name === undefined) return 0;
+  const element = oscillator.circuit.elements.find((entry) => entry.name === name);
+  if (element?.kind === "resistor") return 1 / element.resistance;
+  return transistorAt(oscillator, name, state).noiseConductance;
 }
 
 function compare(

@@ -22,6 +22,7 @@ export {
   cornerConditions,
   logarithmicCurrents,
 } from "./bias.ts";
+export { oscillation, type OscillationOptions } from "./oscillation.ts";
 export { type HandComparison, handComparisons, transistorAt } from "./hand_values.ts";
 export {
   type BindingLimit,

@@ -1,4 +1,5 @@
 import { type Complex, reciprocal } from "./_complex.ts";
+import { firstResonance } from "./_inductor_resonance.ts";
 import type { CoilWarning } from "./inductor_geometry.ts";
 import { coilAdmittance, type CoilExcitation, type CoilParameters } from "./inductor_network.ts";
 
@@ -79,14 +80,8 @@ export interface CoilModelOptions {
 
 const ANY_FREQUENCY = { lowest: 0, highest: Infinity };
 
-/** Points per decade of the search for the self-resonance; a lossy substrate changes slower than this. */
-const SEARCH_PER_DECADE = 40;
-
 /** The search ends where all capacitances but this share are gone. */
 const LEAST_CAPACITANCE_SHARE = 0.01;
-
-/** Halvings that bring the bracket to rounding. */
-const BISECTIONS = 60;
 
 /**
  * A coil from its lumped elements.
@@ -162,36 +157,22 @@ function demand(condition: boolean, wording: string, value: string): void {
   if (!condition) throw new RangeError(`Cannot make the coil: ${wording}, got ${value}`);
 }
 
-/** First zero of the susceptance, from inductive to capacitive. */
+/** Where to look for the self-resonance when the curves have no end: where the network's own may be. */
 function findSelfResonance(
   admittance: (frequency: number) => Complex,
   { inductance, parallelCapacitance, substrate }: CoilParameters,
   range: CoilModel["range"],
 ): number | undefined {
+  const susceptance = (frequency: number) => admittance(frequency).im;
+  if (range.highest < Infinity) return firstResonance(susceptance, range);
   const most = parallelCapacitance + (substrate?.oxideCapacitance ?? 0);
-  if (most === 0 && range.highest === Infinity) return undefined;
+  if (most === 0) return undefined;
   const resonanceWith = (capacitance: number) =>
     1 / (2 * Math.PI * Math.sqrt(inductance * capacitance));
-  const lowest = range.lowest > 0 ? range.lowest : resonanceWith(most) / 10;
-  const highest = Math.min(range.highest, resonanceWith(LEAST_CAPACITANCE_SHARE * most));
-  const count = Math.ceil(Math.log10(highest / lowest) * SEARCH_PER_DECADE);
-  let below = lowest;
-  if (!(admittance(below).im < 0)) return undefined;
-  for (let k = 1; k <= count; k++) {
-    const next = k === count ? highest : lowest * (highest / lowest) ** (k / count);
-    if (admittance(next).im >= 0) return bisect((f) => admittance(f).im, below, next);
-    below = next;
-  }
-  return undefined;
-}
-
-function bisect(value: (x: number) => number, low: number, high: number): number {
-  for (let k = 0; k < BISECTIONS; k++) {
-    const middle = (low + high) / 2;
-    if (value(middle) < 0) low = middle;
-    else high = middle;
-  }
-  return (low + high) / 2;
+  return firstResonance(susceptance, {
+    lowest: resonanceWith(most) / 10,
+    highest: resonanceWith(LEAST_CAPACITANCE_SHARE * most),
+  });
 }
 
 function elementsAt(parameters: CoilParameters, frequency: number): readonly CoilElement[] {

@@ -31,6 +31,7 @@ export interface CeilingValues {
 
 /** One step from the limit of a lossless use of the supply down to a figure of merit. */
 export interface CeilingLoss {
+  /** What takes it away. */
   readonly name: "efficiency" | "noise factor" | "distortion" | "not accounted for";
   /** How much it takes away; negative where it adds [dB]. */
   readonly decibels: number;
@@ -42,6 +43,7 @@ export interface Ceiling {
   readonly limit: number;
   /** Highest possible figure of merit with the values given [dBc/Hz]; `limit` minus all losses. */
   readonly ceiling: number;
+  /** Steps from `limit` to `ceiling`. */
   readonly losses: readonly CeilingLoss[];
   /** What the limit rests on, for print. */
   readonly assumptions: readonly string[];

@@ -24,6 +24,7 @@ export interface FitPoint {
 
 /** How well one term is seen by a curve. */
 export interface FittedTerm {
+  /** Which term. */
   readonly term: FitTerm;
   /** In the unit of the power law's term, 0 where the curve does not ask for it. */
   readonly coefficient: number;
@@ -35,8 +36,11 @@ export interface FittedTerm {
 
 /** A power law that follows a curve. */
 export interface CurveFit {
+  /** The fit. */
   readonly law: PowerLaw;
+  /** Its terms, in the order asked for. */
   readonly terms: readonly FittedTerm[];
+  /** The curve beside its fit. */
   readonly points: readonly FitPoint[];
   /** rms residual, each decade of offset with the same weight [dB]. */
   readonly rms: number;

@@ -32,6 +32,7 @@ export interface BalancedBandwidth {
   readonly status: "found" | "at the lower end" | "at the upper end";
   /** [Hz] */
   readonly bandwidth: number;
+  /** What is left at that bandwidth. */
   readonly noise: IntegratedLockedNoise;
   /**
    * Lowest offset within the limits where the reference's noise, at the output, rises above the

@@ -33,16 +33,21 @@ export interface LockedSources {
 
 /** Levels at one offset behind a loop [dBc/Hz]; `-Infinity` where nothing passes. */
 export interface LockedLevels {
+  /** What is left of the oscillator's. */
   readonly oscillator: number;
+  /** What is left of the reference's; `-Infinity` without a reference. */
   readonly reference: number;
+  /** Sum of both. */
   readonly total: number;
 }
 
 /** What is left of the noise of both behind a loop. */
 export interface IntegratedLockedNoise {
+  /** Of both. */
   readonly total: IntegratedPhaseNoise;
+  /** Of the oscillator. */
   readonly oscillator: IntegratedPhaseNoise;
-  /** Absent without a reference. */
+  /** Of the reference; absent without one. */
   readonly reference?: IntegratedPhaseNoise;
   /** Share of the oscillator in phi^2 [1]. */
   readonly oscillatorShare: number;
@@ -50,6 +55,7 @@ export interface IntegratedLockedNoise {
 
 /** Options of {@linkcode integrateLockedNoise}. */
 export interface IntegrateLockedNoiseOptions extends OffsetRange {
+  /** Loop around the oscillator. */
   readonly loop: Loop;
   /**
    * Carrier f0 [Hz].

@@ -24,6 +24,7 @@ export interface MaskPiece {
   readonly level: number;
   /** Slope [dB per decade], 0 for a flat piece. */
   readonly slope: number;
+  /** Where it comes from. */
   readonly origin: MaskOrigin;
 }
 
@@ -39,6 +40,7 @@ export interface Mask {
 export interface MaskLimit {
   /** [dBc/Hz] */
   readonly level: number;
+  /** Where it comes from. */
   readonly origin: MaskOrigin;
 }
 

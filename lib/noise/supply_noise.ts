@@ -7,7 +7,7 @@
 import { requireFinite, requireNotNegative, requirePositive } from "./_require.ts";
 
 /** Where the square root of two in the results comes from, to be printed with them. */
-export const SIDEBAND_CONVENTION =
+export const SIDEBAND_CONVENTION: string =
   "L = S_phi/2 (IEEE Std 1139) with a one-sided noise density: L = 20 log(K v / (sqrt(2) f)); " +
   "without the half, L would be 3.01 dB higher";
 

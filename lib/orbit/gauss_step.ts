@@ -148,7 +148,7 @@ export function stageResidual(
       }
       out[outAt + (row * s + i) * stride] = value;
       const size = Math.abs(value);
-      if (!(size <= largest)) largest = size;
+      largest = Math.max(largest, size);
     }
   }
   return largest;

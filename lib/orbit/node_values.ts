@@ -21,7 +21,7 @@ const NODE_ITERATIONS = 12;
 const NODE_TOLERANCE = 1e-6;
 /** The estimate is the error to leading order; the rest of the series is smaller than this margin. */
 const PERIOD_SAFETY = 1.5;
-/** The deviation of v1 . dq/dt is seen along the motion only: what lies across it is of its size. */
+/** The deviation of v1 . dq/dt is seen along the motion only. */
 const SENSITIVITY_SAFETY = 3;
 /** A relative error of the period shifts the phase by up to this many times itself, in radians. */
 const PERIOD_TO_PHASE = 2 * Math.PI;
@@ -99,7 +99,8 @@ export interface NodeValues {
   readonly periodError: number;
   /**
    * Estimated error of the sensitivity, relative to its largest value: from the largest deviation of
-   * v1 . dq/dt from 1 at the mesh points.
+   * v1 . dq/dt from 1 at the mesh points. An estimate and no bound: it does not see what lies across
+   * the motion, where slow-fast systems may be some ten times worse.
    */
   readonly sensitivityError: number;
 }
@@ -150,7 +151,7 @@ class FlowReader {
     solve(this.#matrix, this.#pivots, change, { n });
     let size = 0;
     for (let k = 0; k < n; k++) {
-      if (!(Math.abs(change[k]!) <= size)) size = Math.abs(change[k]!);
+      size = Math.max(size, Math.abs(change[k]!));
       x[xAt + k]! += change[k]!;
     }
     for (let i = 0; i < r; i++) {

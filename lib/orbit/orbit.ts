@@ -33,7 +33,10 @@ export interface Work {
 export interface Estimate {
   /** Of the period, relative [1]. */
   readonly period: number;
-  /** Of the phase sensitivity, relative to its largest value [1]. */
+  /**
+   * Of the phase sensitivity, relative to its largest value, judged along the motion [1]: no bound, on
+   * slow-fast systems it may be some ten times too small.
+   */
   readonly sensitivity: number;
 }
 

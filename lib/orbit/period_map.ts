@@ -210,7 +210,7 @@ export class PeriodMap {
         outAt: columnsAt + r + 1,
         stride: width,
       });
-      if (!(largest <= residual)) residual = largest;
+      residual = Math.max(residual, largest);
       solve(this.#J, this.#pivots, columns, {
         n: size,
         columns: width,
@@ -219,7 +219,7 @@ export class PeriodMap {
         bAt: columnsAt,
       });
       const gap = this.#writeStepMap(step, h);
-      if (!(gap <= residual)) residual = gap;
+      residual = Math.max(residual, gap);
     }
     if (!Number.isFinite(residual)) return NaN;
     this.#multiply();
@@ -250,7 +250,7 @@ export class PeriodMap {
         outAt: 0,
         stride: 1,
       });
-      if (!(largest <= residual)) residual = largest;
+      residual = Math.max(residual, largest);
       solve(this.#J, this.#pivots, work, {
         n: size,
         at: step * size * size,
@@ -259,7 +259,7 @@ export class PeriodMap {
       const columnsAt = step * size * width + r + 1;
       for (let k = 0; k < size; k++) this.#columns[columnsAt + k * width] = work[k]!;
       const gap = this.#writeGap(step, h);
-      if (!(gap <= residual)) residual = gap;
+      residual = Math.max(residual, gap);
     }
     if (!Number.isFinite(residual)) return NaN;
     this.#multiplyGap();
@@ -315,7 +315,7 @@ export class PeriodMap {
     for (let row = 0; row < r; row++) {
       let gap = charges[step * r + row]! - charges[(step + 1) * r + row]!;
       for (let j = 0; j < s; j++) gap -= h * weights[j]! * f[(step * s + j) * n + row]!;
-      if (!(Math.abs(gap) <= largest)) largest = Math.abs(gap);
+      largest = Math.max(largest, Math.abs(gap));
       const outputAt = (step * r + row) * size;
       for (let k = 0; k < size; k++) gap += output[outputAt + k]! * columns[columnsAt + k * width]!;
       this.#gap[step * r + row] = gap;
@@ -437,7 +437,7 @@ export class PeriodMap {
         let value = columns[at + r + 1]! + columns[at + r]! * period;
         for (let c = 0; c < r; c++) value += columns[at + c]! * change[c]!;
         work[k] = value;
-        if (!(Math.abs(value) <= largest)) largest = Math.abs(value);
+        largest = Math.max(largest, Math.abs(value));
       }
       if (cut > 0) {
         for (let j = 0; j < s; j++) {

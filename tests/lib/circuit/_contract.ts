@@ -18,6 +18,7 @@ import { phaseSensitivity } from "../../../lib/orbit/phase_sensitivity.ts";
 import { illustrativeCard } from "../device/_card.ts";
 import { derivative, seededUniform } from "../device/_biases.ts";
 import { orbitOf } from "../orbit/_systems.ts";
+import { currentFrom, meanPowers } from "./_power_balance.ts";
 import { NOMINAL } from "./_examples.ts";
 
 export interface ContractCase<Design> {
@@ -165,7 +166,7 @@ export function contract<Design>(
 
   Deno.test(named("the supply delivers what the elements take, over a period"), () => {
     const { oscillator, orbit } = solved();
-    const { delivered, taken } = energy(oscillator, orbit);
+    const { delivered, taken } = meanPowers(oscillator, orbit);
     assertClose(delivered, taken, { rtol: 1e-9, atol: 0 });
   });
 
@@ -378,101 +379,4 @@ function stateFor(circuit: Circuit, from: Circuit, state: Float64Array): Float64
     if (node !== undefined) potentials[node] = from.potential(node, state);
   }
   return circuit.stateAt(potentials);
-}
-
-/** Conduction current that leaves a held node into the elements, and the sum of the sizes. */
-function currentFrom(
-  circuit: Circuit,
-  node: string,
-  x: Float64Array,
-): { sum: number; size: number } {
-  let sum = 0;
-  let size = 0;
-  const add = (current: number) => {
-    sum += current;
-    size += Math.abs(current);
-  };
-  for (const element of circuit.elements) {
-    if (element.kind === "resistor") {
-      const [a, b] = element.nodes;
-      const current = circuit.voltage(a, b, x) / element.resistance;
-      if (a === node) add(current);
-      if (b === node) add(-current);
-    } else if (element.kind === "current") {
-      if (element.nodes[0] === node) add(element.current);
-      if (element.nodes[1] === node) add(-element.current);
-    } else if (element.kind === "inductor") {
-      element.windings.forEach(({ nodes }, k) => {
-        const current = circuit.windingCurrent(element.name, k, x);
-        if (nodes[0] === node) add(current);
-        if (nodes[1] === node) add(-current);
-      });
-    } else if (element.kind === "device") {
-      const currents = circuit.deviceCurrents(element.name, x);
-      element.nodes.forEach((own, k) => {
-        if (own === node) add(currents[k]!);
-      });
-    }
-  }
-  return { sum, size };
-}
-
-/** Mean power from all held nodes, and into all elements: conduction, and v . dQ/dt of the devices. */
-function energy(
-  { circuit, supplyNode, supplyCurrent }: BuiltOscillator,
-  orbit: Orbit,
-): { delivered: number; taken: number } {
-  const { system } = circuit;
-  const { coordinates } = orbit.discrete;
-  const { r, n, unknownScale } = coordinates;
-  let delivered = orbit.mean((x) => circuit.potential(supplyNode, x) * supplyCurrent(x));
-  for (const element of circuit.elements) {
-    if (element.kind !== "potential" || element.node === supplyNode) continue;
-    delivered += element.potential *
-      orbit.mean((x) => currentFrom(circuit, element.node, x).sum);
-  }
-  const rates = (x: Float64Array) => {
-    const { flow, response } = coordinates.reducedFlow(x.map((v, j) => v / unknownScale[j]!));
-    return Float64Array.from({ length: n }, (_, j) => {
-      let rate = 0;
-      for (let i = 0; i < r; i++) rate += response[j * r + i]! * flow[i]!;
-      return rate * unknownScale[j]!;
-    });
-  };
-  assertEquals(system.dimension, n);
-  const taken = orbit.mean((x) => {
-    const rate = rates(x);
-    let power = 0;
-    for (const element of circuit.elements) {
-      switch (element.kind) {
-        case "resistor":
-          power += circuit.voltage(...element.nodes, x) ** 2 / element.resistance;
-          break;
-        case "current":
-          power += circuit.voltage(...element.nodes, x) * element.current;
-          break;
-        case "inductor":
-          element.windings.forEach(({ seriesResistance }, k) => {
-            power += seriesResistance * circuit.windingCurrent(element.name, k, x) ** 2;
-          });
-          break;
-        case "device": {
-          const t = element.nodes.length;
-          const v = Float64Array.from(element.nodes, (node) => circuit.potential(node, x));
-          const out = new Float64Array(2 * t * (t + 1));
-          element.evaluate(v, out);
-          for (let k = 0; k < t; k++) {
-            let current = out[k]!;
-            for (let j = 0; j < t; j++) {
-              const at = circuit.indexOf(element.nodes[j]!);
-              if (at !== undefined) current += out[2 * t + t * t + k * t + j]! * rate[at]!;
-            }
-            power += v[k]! * current;
-          }
-        }
-      }
-    }
-    return power;
-  });
-  return { delivered, taken };
 }
