@@ -39,3 +39,19 @@ export {
   type TrimmedTank,
   trimTank,
 } from "./inductance.ts";
+export {
+  type DesignParameter,
+  type NoiseDerivative,
+  type Suggestion,
+  type WhatIf,
+  whatIf,
+  type WhatIfOptions,
+  type WhatIfPoint,
+} from "./what_if.ts";
+export {
+  type Candidate,
+  type Contender,
+  contender,
+  type ContenderOptions,
+  type TopologyResult,
+} from "./compare_topologies.ts";

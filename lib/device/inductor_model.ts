@@ -1,5 +1,6 @@
-import { type Complex, reciprocal } from "./_complex.ts";
+import { reciprocal } from "./_complex.ts";
 import { firstResonance } from "./_inductor_resonance.ts";
+import type { Admittance } from "./inductor_admittance.ts";
 import type { CoilWarning } from "./inductor_geometry.ts";
 import { coilAdmittance, type CoilExcitation, type CoilParameters } from "./inductor_network.ts";
 
@@ -52,7 +53,7 @@ export interface CoilModel {
   readonly selfResonance: number | undefined;
   readonly warnings: readonly CoilWarning[];
   /** Admittance of the driven coil [S] at a frequency [Hz]. */
-  readonly admittance: (frequency: number) => Complex;
+  readonly admittance: (frequency: number) => Admittance;
   /** Im(Z) / (2 pi f) of the driven coil [H] at a frequency [Hz]; negative above self-resonance. */
   readonly inductance: (frequency: number) => number;
   /** Im(Z) / Re(Z) of the driven coil [1] at a frequency [Hz]; zero at self-resonance. */
@@ -73,7 +74,7 @@ export interface CoilModelOptions {
   /** @default none */
   readonly warnings?: readonly CoilWarning[];
   /** Replaces the admittance of the lumped network, as measured curves do [S]. */
-  readonly admittance?: (frequency: number) => Complex;
+  readonly admittance?: (frequency: number) => Admittance;
   /** @default any frequency above zero */
   readonly range?: CoilModel["range"];
 }
@@ -159,7 +160,7 @@ function demand(condition: boolean, wording: string, value: string): void {
 
 /** Where to look for the self-resonance when the curves have no end: where the network's own may be. */
 function findSelfResonance(
-  admittance: (frequency: number) => Complex,
+  admittance: (frequency: number) => Admittance,
   { inductance, parallelCapacitance, substrate }: CoilParameters,
   range: CoilModel["range"],
 ): number | undefined {

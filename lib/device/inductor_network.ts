@@ -1,4 +1,5 @@
-import { add, type Complex, complex, reciprocal, scale } from "./_complex.ts";
+import { add, complex, reciprocal, scale } from "./_complex.ts";
+import type { Admittance } from "./inductor_admittance.ts";
 
 /** How a coil is driven: between its ends, or at one end with the other at ground. */
 export const COIL_EXCITATIONS = ["differential", "single_ended"] as const;
@@ -43,7 +44,7 @@ export function coilAdmittance(
   parameters: CoilParameters,
   frequency: number,
   { excitation }: { readonly excitation: CoilExcitation },
-): Complex {
+): Admittance {
   const series = seriesAdmittance(parameters, frequency);
   const { substrate } = parameters;
   if (substrate === undefined) return series;
@@ -51,7 +52,7 @@ export function coilAdmittance(
   return add(series, excitation === "differential" ? scale(shunt, 0.5) : shunt);
 }
 
-function seriesAdmittance(parameters: CoilParameters, frequency: number): Complex {
+function seriesAdmittance(parameters: CoilParameters, frequency: number): Admittance {
   const angular = 2 * Math.PI * frequency;
   const { inductance, seriesResistance, parallelCapacitance } = parameters;
   return add(
@@ -66,7 +67,7 @@ function seriesAdmittance(parameters: CoilParameters, frequency: number): Comple
  * @param frequency above zero [Hz]
  * @returns [S]
  */
-export function substrateAdmittance(substrate: SubstrateBranch, frequency: number): Complex {
+export function substrateAdmittance(substrate: SubstrateBranch, frequency: number): Admittance {
   const angular = 2 * Math.PI * frequency;
   const { oxideCapacitance, siliconResistance, siliconCapacitance } = substrate;
   if (oxideCapacitance === 0) return complex(0, 0);

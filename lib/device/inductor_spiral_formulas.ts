@@ -28,10 +28,13 @@ export interface SpiralInductance {
   readonly warnings: readonly CoilWarning[];
 }
 
-type Polygon = Exclude<SpiralShape, "circular">;
+/** A shape with straight sides. */
+export type PolygonShape = Exclude<SpiralShape, "circular">;
 
 /** K1, K2 of the modified Wheeler formula. */
-export const MODIFIED_WHEELER_COEFFICIENTS: Readonly<Record<Polygon, readonly [number, number]>> = {
+export const MODIFIED_WHEELER_COEFFICIENTS: Readonly<
+  Record<PolygonShape, readonly [number, number]>
+> = {
   square: [2.34, 2.75],
   hexagonal: [2.33, 3.82],
   octagonal: [2.25, 3.55],
@@ -49,7 +52,7 @@ export const CURRENT_SHEET_COEFFICIENTS: Readonly<
 
 /** beta and the exponents of dout, w, davg, n, s of the monomial fit; nH and um. */
 export const MONOMIAL_COEFFICIENTS: Readonly<
-  Record<Polygon, readonly [number, number, number, number, number, number]>
+  Record<PolygonShape, readonly [number, number, number, number, number, number]>
 > = {
   square: [1.62e-3, -1.21, -0.147, 2.4, 1.78, -0.03],
   hexagonal: [1.28e-3, -1.24, -0.174, 2.47, 1.77, -0.049],
@@ -123,7 +126,7 @@ function evaluate(
   }
 }
 
-function polygon(shape: SpiralShape, formula: SpiralFormula): Polygon {
+function polygon(shape: SpiralShape, formula: SpiralFormula): PolygonShape {
   if (shape !== "circular") return shape;
   throw new TypeError(
     `Cannot compute the inductance: a circular spiral needs the formula current_sheet, got ${formula}`,

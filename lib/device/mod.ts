@@ -1,9 +1,63 @@
 /**
- * Devices: transistor, junction, technology card.
+ * Devices: transistor, junction, coil, technology card; Touchstone files.
  *
  * @module
  */
 export { type Corner, CORNERS } from "./corner.ts";
+export type { Admittance } from "./inductor_admittance.ts";
+export { commonModeInductance, couplingFromModes } from "./inductor_common_mode.ts";
+export { type CoilCurves, coilCurves, type CoilCurvesOptions } from "./inductor_curves.ts";
+export { type CoilHalves, coilHalves, type CoilHalvesOptions } from "./inductor_filaments.ts";
+export {
+  type CoilFit,
+  type CoilFitElement,
+  type CoilFitResult,
+  fitCoil,
+  type FitCoilOptions,
+  type NoCoilFit,
+} from "./inductor_fit.ts";
+export { type CoilFigures, coilFromFigures } from "./inductor_from_figures.ts";
+export { coilFromGeometry, type CoilFromGeometryOptions } from "./inductor_from_geometry.ts";
+export {
+  type CoilFromNetwork,
+  coilFromNetwork,
+  type CoilFromNetworkOptions,
+} from "./inductor_from_network.ts";
+export {
+  type CoilWarning,
+  SPIRAL_SHAPES,
+  type SpiralDimensions,
+  spiralDimensions,
+  type SpiralGeometry,
+  type SpiralShape,
+} from "./inductor_geometry.ts";
+export { type CoilLayers, type CoilTrace, type TracePi, tracePi } from "./inductor_layers.ts";
+export {
+  type CoilElement,
+  type CoilModel,
+  coilModel,
+  type CoilModelOptions,
+  type CoilNode,
+} from "./inductor_model.ts";
+export {
+  COIL_EXCITATIONS,
+  coilAdmittance,
+  type CoilExcitation,
+  type CoilParameters,
+  substrateAdmittance,
+  type SubstrateBranch,
+} from "./inductor_network.ts";
+export {
+  CURRENT_SHEET_COEFFICIENTS,
+  MODIFIED_WHEELER_COEFFICIENTS,
+  MONOMIAL_COEFFICIENTS,
+  type PolygonShape,
+  SPIRAL_FORMULAS,
+  type SpiralFormula,
+  type SpiralInductance,
+  spiralInductance,
+  type SpiralInductanceOptions,
+} from "./inductor_spiral_formulas.ts";
 export { inversionCharge, inversionSlope } from "./inversion.ts";
 export { Junction, type JunctionParameters } from "./junction.ts";
 export { deviatedTransistor, mismatchDeviation, type TransistorDeviation } from "./mismatch.ts";
@@ -13,6 +67,8 @@ export {
   type ResolvePassivesOptions,
 } from "./resolve_passives.ts";
 export { resolveTransistor, type ResolveTransistorOptions } from "./resolve_transistor.ts";
+export { effectiveThickness, skinDepth } from "./skin_depth.ts";
+export { BULK_METALS, type ConductorMetal, resistivityAt } from "./skin_metal.ts";
 export {
   type CardLimit,
   type CardTransistor,
@@ -20,6 +76,21 @@ export {
   type TechnologyCard,
   technologyCardFrom,
 } from "./technology_card.ts";
+export {
+  type AdmittanceDescription,
+  NETWORK_FORMATS,
+  NETWORK_FREQUENCY_UNITS,
+  NETWORK_PARAMETERS,
+  networkAdmittance,
+  type NetworkData,
+  type NetworkFormat,
+  type NetworkFrequencyUnit,
+  networkFromAdmittance,
+  type NetworkNoisePoint,
+  type NetworkParameter,
+} from "./touchstone_network.ts";
+export { readTouchstone, type ReadTouchstoneOptions } from "./touchstone_read.ts";
+export { writeTouchstone, type WriteTouchstoneOptions } from "./touchstone_write.ts";
 export { Transistor, TRANSISTOR_VALUES } from "./transistor.ts";
 export { inversionName, type TransistorOperatingPoint } from "./transistor_operating_point.ts";
 export {

@@ -9,6 +9,8 @@ import {
   subtract,
 } from "./_complex.ts";
 
+import type { Admittance } from "./inductor_admittance.ts";
+
 /** Network parameters a Touchstone file may hold. */
 export const NETWORK_PARAMETERS = ["S", "Y", "Z", "H", "G"] as const;
 
@@ -63,7 +65,7 @@ export interface NetworkData {
  * @returns shape (ports, ports), row-major [S]
  * @throws {RangeError} when the index is out of range, or the network has no admittance there (a short)
  */
-export function networkAdmittance(network: NetworkData, index: number): readonly Complex[] {
+export function networkAdmittance(network: NetworkData, index: number): readonly Admittance[] {
   const { ports, frequencies, re, im } = network;
   if (!(Number.isInteger(index) && index >= 0 && index < frequencies.length)) {
     throw new RangeError(
@@ -122,7 +124,7 @@ export interface AdmittanceDescription {
   /** Admittance matrix, row-major, shape (ports, ports) [S], at a frequency [Hz]. */
   readonly admittance: (
     frequency: number,
-  ) => readonly { readonly re: number; readonly im: number }[];
+  ) => readonly Admittance[];
   /** @default "S" */
   readonly parameter?: "S" | "Y" | "Z";
   /** Of every port [ohm]. @default 50 */

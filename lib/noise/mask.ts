@@ -44,7 +44,9 @@ export interface MaskLimit {
   readonly origin: MaskOrigin;
 }
 
-/** Shares of a decade below which two corners of a mask are the same: rounding of log10. */
+/** Difference in level of one line, computed from two places: rounding [dB]. */
+const SAME_LEVEL = 1e-9;
+/** Share of a decade within which a crossing is no corner beside another: rounding of log10. */
 const SAME_CORNER = 1e-12;
 
 /**
@@ -180,22 +182,17 @@ function checkPiece({ from, to, level, slope, origin }: MaskPiece): void {
 
 /** Ends and crossings of all pieces, rising; where the last runs to infinity, infinity is left out. */
 function cornersOf(pieces: readonly MaskPiece[]): number[] {
-  const corners = pieces.flatMap(({ from, to }) => [from, to]);
+  const ends = [...new Set(pieces.flatMap(({ from, to }) => [from, to]))];
+  const corners = ends.filter((end) => end < Infinity);
   pieces.forEach((a, index) => {
     for (const b of pieces.slice(index + 1)) {
       const crossing = crossingOf(a, b);
-      if (crossing !== undefined) corners.push(crossing);
+      if (crossing === undefined) continue;
+      const known = corners.some((each) => Math.abs(Math.log10(each / crossing)) < SAME_CORNER);
+      if (!known) corners.push(crossing);
     }
   });
-  corners.sort((a, b) => a - b);
-  const distinct: number[] = [];
-  for (const corner of corners) {
-    const last = distinct.at(-1);
-    if (corner < Infinity && !(last !== undefined && Math.log10(corner / last) < SAME_CORNER)) {
-      distinct.push(corner);
-    }
-  }
-  return distinct;
+  return corners.sort((a, b) => a - b);
 }
 
 function crossingOf(a: MaskPiece, b: MaskPiece): number | undefined {
@@ -223,5 +220,5 @@ function limitIn(pieces: readonly MaskPiece[], offset: number): MaskLimit | unde
 /** Whether `next` is the line that `last`, a part of the envelope, was cut from. */
 function continues(last: MaskPiece, next: MaskPiece): boolean {
   return last.origin === next.origin && last.slope === next.slope &&
-    Math.abs(levelOf(last, last.to) - levelOf(next, last.to)) < SAME_CORNER * 1e3;
+    Math.abs(levelOf(last, last.to) - levelOf(next, last.to)) < SAME_LEVEL;
 }

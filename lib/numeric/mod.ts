@@ -1,5 +1,5 @@
 /**
- * Dense linear algebra and collocation.
+ * Dense linear algebra, collocation and splines.
  *
  * @module
  */
@@ -11,3 +11,10 @@ export {
   lagrangeBasis,
   lagrangeIntegrals,
 } from "./gauss.ts";
+export {
+  type LeastSquares,
+  levenbergMarquardt,
+  type LevenbergMarquardtOptions,
+} from "./levenberg_marquardt.ts";
+export { SplineAxis, type SplineAxisOptions } from "./spline_axis.ts";
+export { TensorSpline } from "./spline_tensor.ts";

@@ -6,7 +6,8 @@
  * capacitance but the tank's; a circuit slowed down at equal tank resistance approaches it.
  */
 import { assert, assertClose } from "../assert.ts";
-import { crossCoupledPair, tankResistance } from "../../lib/circuit/cross_coupled_pair.ts";
+import { crossCoupledPair } from "../../lib/circuit/cross_coupled_pair.ts";
+import { tankResistance } from "../../lib/circuit/tank_resistance.ts";
 import { type BiasSweep, biasSweep, logarithmicCurrents } from "../../lib/design/bias.ts";
 import { transistorAt } from "../../lib/design/hand_values.ts";
 import { CARD, DESIGN, NOMINAL, pairOrbit, quasiStatic, slowed, STIFF_TAIL } from "./_pair.ts";

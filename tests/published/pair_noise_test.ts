@@ -10,8 +10,8 @@ import { assemble } from "../../lib/circuit/circuit.ts";
 import {
   crossCoupledPair,
   type CrossCoupledPairDesign,
-  tankResistance,
 } from "../../lib/circuit/cross_coupled_pair.ts";
+import { tankResistance } from "../../lib/circuit/tank_resistance.ts";
 import { thermalAmplitude } from "../../lib/circuit/element.ts";
 import type { Condition } from "../../lib/circuit/topology.ts";
 import { transistorAt } from "../../lib/design/hand_values.ts";

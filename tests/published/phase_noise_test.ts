@@ -1,6 +1,7 @@
 /** Spectra, figure of merit and closed forms against published formulas and their worked numbers. */
 import { assert, assertClose } from "../assert.ts";
-import { crossCoupledPair, tankResistance } from "../../lib/circuit/cross_coupled_pair.ts";
+import { crossCoupledPair } from "../../lib/circuit/cross_coupled_pair.ts";
+import { tankResistance } from "../../lib/circuit/tank_resistance.ts";
 import {
   carrierLine,
   figureOfMerit,

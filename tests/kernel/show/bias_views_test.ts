@@ -4,7 +4,7 @@ import {
   noiseSharesChart,
   tankWaveform,
 } from "../../../kernel/show/bias_views.ts";
-import { tankResistance } from "../../../lib/circuit/cross_coupled_pair.ts";
+import { tankResistance } from "../../../lib/circuit/tank_resistance.ts";
 import { formatQuantity } from "../../../lib/quantity/format_quantity.ts";
 import { assert, assertClose, assertEquals } from "../../assert.ts";
 import { deadPoint, deadSweep, design, OFFSET, pageOf, sampleSweep } from "./_bias_samples.ts";

@@ -66,7 +66,10 @@ Deno.test("handComparisons: where the mirror's noise counts, the formula without
   const mirror = point.figures!.shares.find(({ device }) => device === "mirror")!.share;
   assert(mirror > 0.2, `the mirror's share is ${mirror}`);
   assertEquals(noise.outcome, "does not hold here");
-  assert(/\d % of the noise comes from (the )?mirror/.test(noise.broken.join()), noise.broken.join());
+  assert(
+    /\d % of the noise comes from (the )?mirror/.test(noise.broken.join()),
+    noise.broken.join(),
+  );
 });
 
 Deno.test("handComparisons: a formula that is off where it should hold disagrees", () => {
