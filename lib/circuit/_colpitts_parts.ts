@@ -3,7 +3,8 @@
  *
  * @module
  */
-import { demandPositive } from "./_topology_parts.ts";
+import { demandPositive, SUPPLY } from "./_topology_parts.ts";
+import type { CircuitElement } from "./element.ts";
 import type { AmplitudeValues, Divider, HandValue, LoopGainValues } from "./topology.ts";
 
 /** Fraction n of the tank voltage at the source, C1 / (C1 + C2) [1]. */
@@ -14,6 +15,21 @@ export function tapOf({ first, second }: Divider): number {
 /** C1 and C2 in series [F]. */
 export function seriesCapacitance({ first, second }: Divider): number {
   return first * second / (first + second);
+}
+
+/** Where a common gate is held: at the supply, or at a bias of its own. */
+export function heldGate(
+  gateBias: number | undefined,
+  { supply }: { readonly supply: number },
+): { readonly node: string; readonly potential: number; readonly elements: CircuitElement[] } {
+  if (gateBias === undefined) return { node: SUPPLY, potential: supply, elements: [] };
+  demandPositive("build the Colpitts oscillator", { "gate bias": [gateBias, "V"] });
+  const [name, node] = ["gate bias", "gate bias"];
+  return {
+    node,
+    potential: gateBias,
+    elements: [{ kind: "potential", name, node, potential: gateBias }],
+  };
 }
 
 /** @throws RangeError for a tap that is missing or not between 0 and 1 */

@@ -22,6 +22,8 @@ export interface ColpittsSchematicValues {
   readonly mirrorWidth: number;
   /** [A] */
   readonly referenceCurrent: number;
+  /** Drawn as a terminal of that name where it is given. */
+  readonly gateBias?: number;
   readonly mirrorCapacitance?: number;
 }
 
@@ -59,7 +61,9 @@ export function colpittsSchematic(values: ColpittsSchematicValues): Schematic {
           symbol("resistor", "tank loss", { at: [RIGHT, 4], value: resistance }),
           symbol("label", "drain", { at: [FAR + 2, DRAIN] }),
           symbol("transistor n", "core", { at: [CORE - 1, GATE], value: core.width }),
-          symbol("supply", "supply", { at: [CORE - 4, GATE - 2], mirrored: true }),
+          values.gateBias === undefined
+            ? symbol("supply", "supply", { at: [CORE - 4, GATE - 2], mirrored: true })
+            : symbol("label", "gate bias", { at: [CORE - 4, GATE - 2], mirrored: true }),
           symbol("capacitor", "first capacitor", { at: [RIGHT, GATE], value: divider.first }),
         ],
         wires: [

@@ -4,7 +4,7 @@
  * @module
  */
 import type { TransistorSize } from "../device/transistor_parameters.ts";
-import { demandDivider, seriesCapacitance, tapOf } from "./_colpitts_parts.ts";
+import { demandDivider, heldGate, seriesCapacitance, tapOf } from "./_colpitts_parts.ts";
 import type { PairFoot } from "./_pair_parts.ts";
 import {
   capacitors,
@@ -31,6 +31,7 @@ export function buildDifferentialColpitts(
       readonly divider: Divider;
       readonly joined?: boolean;
       readonly core: TransistorSize;
+      readonly gateBias?: number;
       readonly mirrorCapacitance?: number;
     };
     readonly foot: PairFoot;
@@ -41,8 +42,10 @@ export function buildDifferentialColpitts(
   const { supply } = shop.condition;
   const factor = shop.passives.capacitor;
   const second = divider.second * factor;
+  const gate = heldGate(design.gateBias, { supply });
   const circuit = assemble([
     { kind: "potential", name: "supply", node: SUPPLY, potential: supply },
+    ...gate.elements,
     ...tappedTank(tank, { tap: SUPPLY, shop }),
     ...capacitors([
       ["first capacitor plus", ["plus", "source plus"], divider.first * factor],
@@ -58,7 +61,7 @@ export function buildDifferentialColpitts(
       shop.transistor(`core ${side}`, {
         kind: "n",
         size: core,
-        at: { drain: side, gate: SUPPLY, source: `source ${side}`, bulk: GROUND },
+        at: { drain: side, gate: gate.node, source: `source ${side}`, bulk: GROUND },
       })
     ),
     ...foot.elements,
@@ -67,8 +70,8 @@ export function buildDifferentialColpitts(
   const potentials = {
     plus: supply,
     minus: supply,
-    "source plus": supply / 3,
-    "source minus": supply / 3,
+    "source plus": gate.potential / 3,
+    "source minus": gate.potential / 3,
     mirror: supply / 2,
     ...foot.guess,
   };
@@ -82,7 +85,7 @@ export function buildDifferentialColpitts(
   const apart = circuit.voltage("plus", "minus", kick.state) / 2;
   for (const [side, sign] of [["plus", 1], ["minus", -1]] as const) {
     const at = circuit.indexOf(`source ${side}`);
-    if (at !== undefined) kick.state[at] = supply / 3 + sign * tap * apart;
+    if (at !== undefined) kick.state[at] = gate.potential / 3 + sign * tap * apart;
   }
   return {
     circuit,

@@ -31,6 +31,8 @@ export interface DifferentialColpittsSchematicValues {
   readonly mirrorWidth: number;
   /** [A] */
   readonly referenceCurrent: number;
+  /** Drawn as a terminal of that name where it is given. */
+  readonly gateBias?: number;
   readonly tailCapacitance?: number;
   readonly mirrorCapacitance?: number;
 }
@@ -111,7 +113,11 @@ export function differentialColpittsSchematic(
       loadPieces({ capacitance: 0 }),
       bothSides(side, { about: MIDDLE, rename: otherSide }),
       {
-        symbols: [symbol("supply", "supply", { at: [MIDDLE, GATES - 1] })],
+        symbols: [
+          values.gateBias === undefined
+            ? symbol("supply", "supply", { at: [MIDDLE, GATES - 1] })
+            : symbol("label", "gate bias", { at: [MIDDLE, GATES - 1] }),
+        ],
         wires: [[[MIDDLE, GATES - 1], [MIDDLE, GATES]]],
         joints: [[MIDDLE, GATES]],
       },

@@ -1,6 +1,7 @@
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import {
   demandDivider,
+  heldGate,
   seriesCapacitance,
   SIDE_LOOP_GAIN,
   sideAmplitude,
@@ -42,6 +43,8 @@ export interface ColpittsDesign {
   readonly current: number;
   /** Tail current over reference current; the mirror transistor is this much narrower [1]. */
   readonly mirrorRatio: number;
+  /** Potential of the core's gate: the lower, the further its drain may swing [V]. @default the supply */
+  readonly gateBias?: number;
   /** From the mirror's gate to ground [F]. @default 0 */
   readonly mirrorCapacitance?: number;
   /** Threshold option of all transistors. @default "regular" */
@@ -49,8 +52,8 @@ export interface ColpittsDesign {
 }
 
 /**
- * Single-ended Colpitts oscillator: an N transistor with its gate at the supply, coil at its drain, a
- * capacitive divider from drain over source to ground, a mirrored tail at the source.
+ * Single-ended Colpitts oscillator: an N transistor with its gate held, coil at its drain, a capacitive
+ * divider from drain over source to ground, a mirrored tail at the source.
  *
  * States: drain, source, mirror gate, coil.
  */
@@ -68,8 +71,10 @@ export const colpitts: Topology<ColpittsDesign> = {
     const { supply, temperature } = condition;
     const resistance = tankResistance(tank) / shop.passives.metalResistance;
     const factor = shop.passives.capacitor;
+    const gate = heldGate(design.gateBias, { supply });
     const circuit = assemble([
       { kind: "potential", name: "supply", node: SUPPLY, potential: supply },
+      ...gate.elements,
       {
         kind: "inductor",
         name: "coil",
@@ -91,7 +96,7 @@ export const colpitts: Topology<ColpittsDesign> = {
       shop.transistor("core", {
         kind: "n",
         size: core,
-        at: { drain: "drain", gate: SUPPLY, source: "source", bulk: GROUND },
+        at: { drain: "drain", gate: gate.node, source: "source", bulk: GROUND },
       }),
       ...mirroredSources(shop, {
         kind: "n",
@@ -102,7 +107,7 @@ export const colpitts: Topology<ColpittsDesign> = {
       }),
     ]);
     const tap = tapOf(divider);
-    const potentials = { drain: supply, source: supply / 3, mirror: supply / 2 };
+    const potentials = { drain: supply, source: gate.potential / 3, mirror: supply / 2 };
     const capacitance = tank.capacitance + seriesCapacitance(divider);
     return {
       circuit,
@@ -119,7 +124,7 @@ export const colpitts: Topology<ColpittsDesign> = {
         state: circuit.stateAt({
           ...potentials,
           drain: supply * (1 + KICK),
-          source: supply * (1 / 3 + KICK * tap),
+          source: gate.potential / 3 + KICK * supply * tap,
         }),
         period: 2 * Math.PI * Math.sqrt(tank.inductance * capacitance),
       },

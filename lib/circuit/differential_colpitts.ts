@@ -25,6 +25,8 @@ export interface DifferentialColpittsDesign {
   readonly current: number;
   /** Current of one tail over reference current; the mirror transistor is this much narrower [1]. */
   readonly mirrorRatio: number;
+  /** Potential of the cores' gates: the lower, the further the outputs may swing [V]. @default the supply */
+  readonly gateBias?: number;
   /** From the mirror's gate to ground [F]. @default 0 */
   readonly mirrorCapacitance?: number;
   /** Threshold option of all transistors. @default "regular" */

@@ -27,6 +27,8 @@ export interface SteeredColpittsDesign {
   readonly mirrorRatio: number;
   /** From the tail node to ground [F]. @default 0 */
   readonly tailCapacitance?: number;
+  /** Potential of the cores' gates: the lower, the further the outputs may swing [V]. @default the supply */
+  readonly gateBias?: number;
   /** From the mirror's gate to ground [F]. @default 0 */
   readonly mirrorCapacitance?: number;
   /** Threshold option of all transistors. @default "regular" */

@@ -35,12 +35,19 @@ export interface WhatIfOptions<Design> {
   readonly condition: Condition;
   /** Offset of the phase noise [Hz]. */
   readonly offset: number;
+  /**
+   * The noise that is judged [dBc/Hz].
+   * @default the white phase noise at the offset
+   */
+  readonly noise?: (oscillator: BuiltOscillator, orbit: Orbit) => number;
   readonly parameters: readonly DesignParameter<Design>[];
 }
 
 /** A design solved at one value of one parameter. */
 export interface WhatIfPoint {
   readonly figures: OperatingFigures;
+  /** The noise that is judged [dBc/Hz]. */
+  readonly noise: number;
   /** Startup loop gain [1]. */
   readonly loopGain: number;
 }
@@ -83,7 +90,7 @@ export interface WhatIf {
 }
 
 /**
- * Derivatives of white phase noise, amplitude, power and frequency by each parameter, from orbits
+ * Derivatives of phase noise, amplitude, power and frequency by each parameter, from orbits
  * solved again at 1 % on either side, and for each parameter the change that would bring the asked
  * improvement, at most by a factor of two, solved again.
  *
@@ -115,9 +122,7 @@ export function whatIf<Design>(
       name: parameter.name,
       unit: parameter.unit,
       value,
-      noise: above && below
-        ? (above.figures.phaseNoise - below.figures.phaseNoise) / span
-        : undefined,
+      noise: above && below ? (above.noise - below.noise) / span : undefined,
       amplitude: log(({ amplitude }) => amplitude),
       power: log(({ power }) => power),
       frequency: log(({ frequency }) => frequency),
@@ -139,7 +144,7 @@ export function whatIf<Design>(
     }];
   });
   const size = ({ noise }: NoiseDerivative) => Math.abs(noise ?? 0);
-  const gain = ({ after }: Suggestion) => after ? after.figures.phaseNoise : Infinity;
+  const gain = ({ after }: Suggestion) => after ? after.noise : Infinity;
   return {
     now,
     step: DERIVATIVE_STEP,
@@ -152,7 +157,7 @@ export function whatIf<Design>(
 function solver<Design>(
   topology: Topology<Design>,
   design: Design,
-  { card, condition, offset }: WhatIfOptions<Design>,
+  { card, condition, offset, noise }: WhatIfOptions<Design>,
 ): (variant: Design) => WhatIfPoint | undefined {
   const started = (oscillator: BuiltOscillator) => {
     const outcome = startup(oscillator);
@@ -172,8 +177,10 @@ function solver<Design>(
     const near = homeOrbit && findOrbit(oscillator.circuit.system, { start: homeOrbit });
     const orbit = near instanceof Orbit ? near : grown(oscillator, own);
     if (!orbit) return undefined;
+    const figures = operatingFigures(oscillator, orbit, { supply: condition.supply, offset });
     return {
-      figures: operatingFigures(oscillator, orbit, { supply: condition.supply, offset }),
+      figures,
+      noise: noise ? noise(oscillator, orbit) : figures.phaseNoise,
       loopGain: own.loopGain,
     };
   };

@@ -4,7 +4,7 @@
  *
  * @module
  */
-import { flag, list, notNegative, positive, signed, text, word } from "./_card_shape.ts";
+import { flag, list, notNegative, optional, positive, signed, text, word } from "./_card_shape.ts";
 
 /** Classes of human-body-model withstand voltage, ANSI/ESDA/JEDEC JS-001, table 3. */
 export const HBM_CLASSES = ["0Z", "0A", "0B", "1A", "1B", "1C", "2", "3A", "3B"] as const;
@@ -77,6 +77,70 @@ const transistor = {
   corners: { slow: transistorCorner, typical: transistorCorner, fast: transistorCorner },
 } as const;
 
+const varactorCorner = {
+  /** Factor on every varactor capacitance [1]. */
+  capacitanceFactor: positive("1"),
+} as const;
+
+const switchCorner = {
+  /** Factor on the on-resistance [1]. */
+  onResistanceFactor: positive("1"),
+  /** Factor on the off-capacitance [1]. */
+  offCapacitanceFactor: positive("1"),
+} as const;
+
+const varactors = {
+  corners: { slow: varactorCorner, typical: varactorCorner, fast: varactorCorner },
+  /** Of every varactor capacitance [1/K]. */
+  temperatureCoefficient: signed("1/K"),
+  junction: optional({
+    /** At zero bias [F/m^2]. */
+    zeroBiasCapacitance: positive("F/m^2"),
+    /** [V] */
+    builtInPotential: positive("V"),
+    /** Grading coefficient, below 1 [1]. */
+    grading: positive("1"),
+    /** At the nominal temperature [A/m^2]. */
+    saturationCurrent: notNegative("A/m^2"),
+    /** Emission coefficient [1]. */
+    emission: positive("1"),
+    /** Series resistance times area [ohm m^2]. */
+    seriesResistance: notNegative("ohm*m^2"),
+  }),
+  accumulation: optional({
+    /** Of the gate over the well in accumulation [F/m^2]. */
+    maximumCapacitance: positive("F/m^2"),
+    /** In depletion [F/m^2]. */
+    minimumCapacitance: positive("F/m^2"),
+    /** Of each edge along the width, at any voltage [F/m]. */
+    fringeCapacitance: notNegative("F/m"),
+    /** Gate-well voltage of the mean capacitance [V]. */
+    centreVoltage: signed("V"),
+    /** Voltage scale of the transition [V]. */
+    transitionVoltage: positive("V"),
+    /** Of the well under the gate [ohm], per square. */
+    wellSheetResistance: notNegative("ohm"),
+    /** Of gate and contacts times width [ohm m]. */
+    contactResistance: notNegative("ohm*m"),
+  }),
+} as const;
+
+const capacitorBank = {
+  /** Resistance of a closed differential switch times its width [ohm m]. */
+  switchOnResistance: positive("ohm*m"),
+  /** Relative rise of that with temperature [1/K]. */
+  switchTemperatureCoefficient: signed("1/K"),
+  /** Between the ends of an open differential switch, over its width [F/m]. */
+  switchOffCapacitance: positive("F/m"),
+  /** Quality factor of the capacitors themselves [1]. */
+  capacitorQuality: positive("1"),
+  /** Frequency at which it holds [Hz]. */
+  capacitorQualityFrequency: positive("Hz"),
+  /** Capacitance of the outer plates to the substrate over the cell's own, below 1 [1]. */
+  plateFraction: notNegative("1"),
+  corners: { slow: switchCorner, typical: switchCorner, fast: switchCorner },
+} as const;
+
 /** A limit with the place its figure comes from. */
 function limit<const U extends string>(unit: U) {
   return { value: positive(unit), origin: text } as const;
@@ -109,6 +173,10 @@ export const CARD_FIELDS = {
     /** Of the thick metal of inductors [m]. */
     thickMetalThickness: positive("m"),
   },
+  /** What the process offers as varactors. */
+  varactors: optional(varactors),
+  /** Switches and capacitors of a switched bank. */
+  capacitorBank: optional(capacitorBank),
   limits: {
     /** Peak gate-source voltage, magnitude [V]. */
     gateSourceVoltage: limit("V"),

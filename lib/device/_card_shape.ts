@@ -36,13 +36,26 @@ export interface ListField<G extends Group = Group> {
   readonly of: G;
 }
 
+/** A group that a card may leave out. */
+export interface OptionalGroup<G extends Group = Group> {
+  readonly field: "optional";
+  readonly of: G;
+}
+
 /** Named fields; names are in camelCase here and in snake_case in the file. */
 export interface Group {
   readonly [name: string]: Shape;
 }
 
 /** Anything a field can be. */
-export type Shape = QuantityField | TextField | WordField | FlagField | ListField | Group;
+export type Shape =
+  | QuantityField
+  | TextField
+  | WordField
+  | FlagField
+  | ListField
+  | OptionalGroup
+  | Group;
 
 /** The TypeScript type of the data that a shape describes. */
 export type DataOf<S> = S extends QuantityField ? number
@@ -50,6 +63,7 @@ export type DataOf<S> = S extends QuantityField ? number
   : S extends WordField<infer W> ? W
   : S extends FlagField ? boolean
   : S extends ListField<infer G> ? readonly DataOf<G>[]
+  : S extends OptionalGroup<infer G> ? DataOf<G> | undefined
   : { readonly [K in keyof S]: DataOf<S[K]> };
 
 /** A quantity > 0. */
@@ -81,6 +95,11 @@ export function word<const W extends string>(...words: W[]): WordField<W> {
 /** A list of groups. */
 export function list<const G extends Group>(of: G): ListField<G> {
   return { field: "list", of };
+}
+
+/** A group that may be left out. */
+export function optional<const G extends Group>(of: G): OptionalGroup<G> {
+  return { field: "optional", of };
 }
 
 /** True when a shape is a group and not a single field. */

@@ -1,7 +1,7 @@
 import { capacitorLoss } from "./capacitor_loss.ts";
 
 /** Bits a bank may have: its codes are listed one by one. */
-const MOST_BITS = 12;
+const MOST_BITS = 10;
 
 /** Substitutions after which a bank's resonance no longer moves. */
 const SUBSTITUTIONS = 4;

@@ -92,8 +92,11 @@ const SILICON_CAPACITANCE_SHARE = 0.3;
 /** A substrate branch is kept when it brings the residual below this share. */
 const WORTH_A_SUBSTRATE = 0.8;
 
-/** A residual that needs no further element [1]: a thousandth of a per cent. */
-const FITS_ALREADY = 1e-5;
+/** A residual that needs no further element [1]: no measurement of a coil is better. */
+const FITS_ALREADY = 1e-4;
+
+/** Gain below which a step no longer counts; an absent element's logarithm falls for ever. */
+const SEARCH = { tolerance: 1e-9, iterations: 300 };
 
 /** Capacitance to start from where the curves show none [F]. */
 const LEAST_CAPACITANCE = 1e-16;
@@ -127,14 +130,18 @@ export function fitCoil(curves: CoilCurves, options: FitCoilOptions = {}): CoilF
   const search = (names: readonly CoilFitElement[], starts: readonly number[][]) => {
     const attempts = starts.map((start) => attempt(observations, names, start));
     evaluations += attempts.reduce((sum, each) => sum + each.evaluations, 0);
-    return attempts.reduce((best, each) => each.sumOfSquares < best.sumOfSquares ? each : best);
+    const settledOnes = attempts.filter(({ status }) => status === "found");
+    return (settledOnes.length > 0 ? settledOnes : attempts).reduce((best, each) =>
+      each.sumOfSquares < best.sumOfSquares ? each : best
+    );
   };
   const plain = substrate === "with" ? undefined : search(PLAIN, [first]);
   const settled = plain && (substrate === "without" || plain.rms < FITS_ALREADY);
   const full = settled
     ? undefined
     : search(elements, substrateStarts(first, curves, elements.length));
-  const best = full && (!plain || full.rms < WORTH_A_SUBSTRATE * plain.rms) ? full : plain!;
+  const worthIt = full && (!plain || full.rms < WORTH_A_SUBSTRATE * plain.rms);
+  const best = worthIt ? full : plain!;
   if (best.status === "not_found") {
     return {
       status: "not_found",
@@ -248,7 +255,7 @@ function attempt(
       });
     },
     start,
-    { count },
+    { count, ...SEARCH },
   );
   const variance = result.sumOfSquares / Math.max(1, count - elements.length);
   return {

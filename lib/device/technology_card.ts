@@ -64,7 +64,39 @@ export function technologyCardFrom(data: unknown, parse: ParseCardQuantity): Tec
       );
     }
   }
+  checkCapacitors(card);
   return card;
+}
+
+function checkCapacitors({ varactors, capacitorBank }: TechnologyCard): void {
+  const { junction, accumulation } = varactors ?? {};
+  if (junction && !(junction.grading < 1)) {
+    throw cardError(
+      RangeError,
+      "varactors.junction.grading",
+      "a number < 1",
+      `${junction.grading}`,
+    );
+  }
+  if (accumulation) {
+    const { minimumCapacitance: least, maximumCapacitance: most } = accumulation;
+    if (!(least <= most)) {
+      throw cardError(
+        RangeError,
+        "varactors.accumulation",
+        "minimum_capacitance <= maximum_capacitance",
+        `${least}, ${most}`,
+      );
+    }
+  }
+  if (capacitorBank && !(capacitorBank.plateFraction < 1)) {
+    throw cardError(
+      RangeError,
+      "capacitor_bank.plate_fraction",
+      "a number < 1",
+      `${capacitorBank.plateFraction}`,
+    );
+  }
 }
 
 interface Place {
@@ -90,10 +122,15 @@ function readGroup(data: unknown, group: Group, place: Place): Record<string, un
   const result: Record<string, unknown> = {};
   for (const [written, name] of known) {
     const path = join(place.path, written);
+    const shape = group[name]!;
+    if (!isGroup(shape) && shape.field === "optional" && !Object.hasOwn(entries, written)) {
+      result[name] = undefined;
+      continue;
+    }
     if (!Object.hasOwn(entries, written)) {
       throw cardError(TypeError, path, "a value", "no such field");
     }
-    result[name] = readShape(entries[written], group[name]!, { ...place, path });
+    result[name] = readShape(entries[written], shape, { ...place, path });
   }
   return result;
 }
@@ -112,6 +149,8 @@ function readShape(data: unknown, shape: Shape, place: Place): unknown {
     case "word":
       if (shape.words.some((known) => known === data)) return data;
       throw cardError(TypeError, place.path, `one of ${shape.words.join(", ")}`, describe(data));
+    case "optional":
+      return readGroup(data, shape.of, place);
     case "list":
       if (Array.isArray(data) && data.length > 0) {
         return data.map((item, i) =>

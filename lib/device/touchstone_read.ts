@@ -158,7 +158,7 @@ function readSecond({ lines, lastLine, asked, fail }: FileParts): NetworkData {
     fail,
   });
   const { frequencies, lines: starts, re, im } = readNetworkData(networkLines, layout, fail);
-  demandCount("frequencies", frequencies.length, {
+  demandCount("frequency point", frequencies.length, {
     wanted: header.frequencies,
     extra: starts[header.frequencies],
     end: noiseLines?.line ?? end,
@@ -166,7 +166,7 @@ function readSecond({ lines, lastLine, asked, fail }: FileParts): NetworkData {
   });
   const noise = noiseLines ? readNoise(noiseLines.lines, layout, fail) : [];
   if (noiseLines) {
-    demandCount("noise frequencies", noise.length, {
+    demandCount("noise frequency point", noise.length, {
       wanted: header.noiseFrequencies,
       extra: noiseLines.lines[header.noiseFrequencies]?.number,
       end,
@@ -223,7 +223,7 @@ function sections(
   if (stray) throw fail(stray.number, "data, [Noise Data] or [End]", `[${stray.keyword}]`);
   if (noiseAt < 0) {
     if (header.noiseFrequencies > 0) {
-      throw fail(end, `[Noise Data] with ${header.noiseFrequencies} frequencies`, "[End]");
+      throw fail(end, `[Noise Data] with ${countOf(header.noiseFrequencies, "line")}`, "[End]");
     }
     return { network: inside, noise: undefined, end };
   }
@@ -250,7 +250,11 @@ function demandCount(
   },
 ): void {
   if (found === wanted) return;
-  throw fail(found > wanted ? extra ?? end : end, `${wanted} ${what} as declared`, `${found}`);
+  throw fail(
+    found > wanted ? extra ?? end : end,
+    `${countOf(wanted, what)} as declared`,
+    `${found}`,
+  );
 }
 
 function network(

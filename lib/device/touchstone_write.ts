@@ -25,7 +25,7 @@ const MOST_DIGITS = 17;
  * Writes a network as the text of a Touchstone file.
  *
  * @throws {RangeError} when the digits are out of range, a comment holds a line break, a zero is to be
- *   written in decibels, or the ports of a first-version file have different references
+ *   written in decibels, or a first-version file cannot hold the references or the noise parameters
  * @see IBIS Open Forum, Touchstone File Format Specification, version 2.0 (2009)
  */
 export function writeTouchstone(
@@ -49,6 +49,7 @@ export function writeTouchstone(
   const { ports, parameter, frequencies, noise } = network;
   const first = version === "1.0";
   const reference = commonReference(network, first);
+  if (first) demandFallBack(network);
   const show = (value: number) => value.toPrecision(digits);
   const lines = comments.map((comment) => `! ${comment}`);
   if (!first) lines.push("[Version] 2.0");
@@ -99,6 +100,17 @@ function commonReference({ referenceResistances }: NetworkData, demanded: boolea
     );
   }
   return reference;
+}
+
+/** Without a keyword, noise parameters are told by a frequency that does not rise. */
+function demandFallBack({ frequencies, noise }: NetworkData): void {
+  const begin = noise[0]?.frequency;
+  const last = frequencies.at(-1) ?? 0;
+  if (begin === undefined || begin <= last) return;
+  throw new RangeError(
+    `Cannot write the network: in version 1.0 noise parameters must begin at or below the last ` +
+      `frequency, ${last} Hz, got ${begin} Hz`,
+  );
 }
 
 function pair(re: number, im: number, format: NetworkFormat): [number, number] {

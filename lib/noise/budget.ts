@@ -6,10 +6,12 @@
  * @module
  */
 import type { BuiltOscillator } from "../circuit/topology.ts";
-import { inputSensitivity } from "../orbit/input_sensitivity.ts";
+import { type InputSensitivity, inputSensitivity } from "../orbit/input_sensitivity.ts";
 import type { Orbit } from "../orbit/orbit.ts";
+import { phaseDiffusion } from "../orbit/phase_diffusion.ts";
 import { phaseTransfer } from "../orbit/phase_transfer.ts";
 import type { NoiseSource } from "../orbit/system.ts";
+import type { PowerLaw } from "./power_law.ts";
 
 /** Noise that enters through an input of the circuit: a supply, a control voltage, a current. */
 export interface InputNoise {
@@ -51,13 +53,20 @@ export interface NoiseBudget {
   readonly total: readonly number[];
   /** Amplitude noise in total [dBc/Hz], shape (m,). */
   readonly amplitude: readonly number[];
-  /** Local slope d L / d log10 f [dB per decade], shape (m,). */
-  readonly slopes: readonly number[];
+  /** Local slope d L / d log10 f [dB per decade], shape (m,); undefined at a single offset. */
+  readonly slopes: readonly (number | undefined)[];
   /**
    * Offset at which 1/f noise and the rest are equal [Hz]; undefined where they do not cross within
    * the offsets.
    */
   readonly corner: number | undefined;
+  /**
+   * The circuit's own sources in the limit of small offset, 1/f^3 and 1/f^2, with the added noise at the
+   * last offset as floor. Slow poles and inputs make the total leave it.
+   */
+  readonly asymptotes: PowerLaw;
+  /** White phase diffusion over that of the tank's loss alone, in the limit of small offset [1]. */
+  readonly noiseFactor: number;
 }
 
 /** Options of {@linkcode noiseBudget}. */
@@ -76,8 +85,9 @@ export interface NoiseBudgetOptions {
  * An input is taken at the gain K = df/dp of the orbit, L = (K S / f)^2 / 2 with the one-sided density
  * S: right below every pole between the input and the tank.
  *
+ * @throws TypeError without an offset
  * @throws RangeError for offsets that are not positive and increasing or reach half the carrier, for
- * an unknown input and for a negative density
+ * an unknown input, for a negative density and for added noise that is no level below 0 dBc/Hz
  */
 export function noiseBudget(
   oscillator: BuiltOscillator,
@@ -100,39 +110,21 @@ export function noiseBudget(
     amplitude: Float64Array.from(columns, (column) => column[k]!.amplitude),
   }));
   const gains = inputs.length > 0 ? inputSensitivity(orbit) : [];
-  for (const { input, label, density } of inputs) {
-    const gain = gains.find(({ name }) => name === input);
-    if (!gain) {
-      throw new RangeError(
-        `Cannot build the budget: the input must be one of ${
-          gains.map(({ name }) => name).join(", ")
-        }, got "${input}"`,
-      );
-    }
+  const nothing = new Float64Array(offsets.length);
+  for (const noise of inputs) {
+    const phase = inputPhase(noise, { gains, offsets });
     entries.push({
-      device: input,
-      label,
+      device: noise.input,
+      label: noise.label,
       origin: "input",
-      phase: Float64Array.from(offsets, (offset) => {
-        const own = density(offset);
-        if (!(own >= 0)) {
-          throw new RangeError(
-            `Cannot build the budget: the density of ${label} must be >= 0 ${gain.unit}/sqrt(Hz), got ${own} at ${offset} Hz`,
-          );
-        }
-        return (gain.frequency * own / offset) ** 2 / 2;
-      }),
-      amplitude: new Float64Array(offsets.length),
+      phase,
+      amplitude: nothing,
     });
   }
-  for (const { label, level } of added) {
-    entries.push({
-      device: "added",
-      label,
-      origin: "added",
-      phase: Float64Array.from(offsets, (offset) => 10 ** (level(offset) / 10)),
-      amplitude: new Float64Array(offsets.length),
-    });
+  for (const noise of added) {
+    const { label } = noise;
+    const phase = addedPhase(noise, offsets);
+    entries.push({ device: "added", label, origin: "added", phase, amplitude: nothing });
   }
   entries.sort((a, b) => b.phase[0]! - a.phase[0]!);
   const sum = (read: (entry: BudgetEntry) => Float64Array, of: readonly BudgetEntry[]) =>
@@ -140,7 +132,11 @@ export function noiseBudget(
   const decibel = (values: readonly number[]) => values.map((value) => 10 * Math.log10(value));
   const phase = sum((entry) => entry.phase, entries);
   const total = decibel(phase);
-  const flicker = sum((entry) => entry.phase, entries.filter(({ origin }) => origin === "1/f"));
+  const only = (origin: BudgetEntry["origin"]) =>
+    sum((entry) => entry.phase, entries.filter((entry) => entry.origin === origin));
+  const flicker = only("1/f");
+  const limit = phaseDiffusion(orbit, circuit.sources);
+  const square = orbit.frequency ** 2;
   return {
     frequency: orbit.frequency,
     offsets,
@@ -149,14 +145,71 @@ export function noiseBudget(
     amplitude: decibel(sum((entry) => entry.amplitude, entries)),
     slopes: slopesOf(offsets, total),
     corner: crossingOffset(offsets, flicker, phase.map((value, k) => value - flicker[k]!)),
+    asymptotes: {
+      inverseCube: limit.sources.reduce(
+        (cube, { color, mean }) => color === "1/f" ? cube + square * mean ** 2 / 2 : cube,
+        0,
+      ),
+      inverseSquare: square * limit.total,
+      floor: only("added").at(-1)!,
+    },
+    noiseFactor: limit.total / limit.sources
+      .filter(({ device }) => oscillator.parts["tank"]?.includes(device))
+      .reduce((tankOnly, { diffusion }) => tankOnly + diffusion, 0),
   };
 }
 
+/** Phase noise of an input's noise at each offset [1/Hz]. */
+function inputPhase(
+  { input, label, density }: InputNoise,
+  { gains, offsets }: {
+    readonly gains: readonly InputSensitivity[];
+    readonly offsets: readonly number[];
+  },
+): Float64Array {
+  const gain = gains.find(({ name }) => name === input);
+  if (!gain) {
+    const names = gains.map(({ name }) => name).join(", ");
+    throw new RangeError(
+      `Cannot build the budget: the input must be one of ${names}, got "${input}"`,
+    );
+  }
+  return Float64Array.from(offsets, (offset) => {
+    const own = density(offset);
+    if (!(own >= 0 && own < Infinity)) {
+      throw new RangeError(
+        `Cannot build the budget: the density of ${label} must be >= 0 ${gain.unit}/sqrt(Hz) and ` +
+          `finite, got ${own} at ${offset} Hz`,
+      );
+    }
+    return (gain.frequency * own / offset) ** 2 / 2;
+  });
+}
+
+/** Added noise at each offset [1/Hz]. */
+function addedPhase({ label, level }: AddedNoise, offsets: readonly number[]): Float64Array {
+  return Float64Array.from(offsets, (offset) => {
+    const own = level(offset);
+    // A level at or above the carrier in 1 Hz is a linear density, or dB of something else.
+    if (!(own < 0)) {
+      throw new RangeError(
+        `Cannot build the budget: ${label} must be a level below 0 dBc/Hz, got ${own} at ${offset} Hz`,
+      );
+    }
+    return 10 ** (own / 10);
+  });
+}
+
 function refuseOffsets(offsets: readonly number[], frequency: number): void {
-  if (offsets.length === 0) throw new RangeError("Cannot build the budget: there are no offsets");
+  if (offsets.length === 0) {
+    throw new TypeError("Cannot build the budget: expected at least 1 offset, got 0");
+  }
   offsets.forEach((offset, k) => {
     if (!(offset > 0)) {
       throw new RangeError(`Cannot build the budget: offsets must be > 0 Hz, got ${offset} Hz`);
+    }
+    if (offset === offsets[k - 1]) {
+      throw new RangeError(`Cannot build the budget: the offset ${offset} Hz is there twice`);
     }
     if (!(offset > (offsets[k - 1] ?? 0))) {
       throw new RangeError(
@@ -176,11 +229,14 @@ function refuseOffsets(offsets: readonly number[], frequency: number): void {
 }
 
 /** Slopes in dB per decade by neighbours on both sides, one at the ends. */
-function slopesOf(offsets: readonly number[], level: readonly number[]): number[] {
+function slopesOf(
+  offsets: readonly number[],
+  level: readonly number[],
+): (number | undefined)[] {
   return offsets.map((_, k) => {
     const before = Math.max(0, k - 1);
     const after = Math.min(offsets.length - 1, k + 1);
-    if (after === before) return NaN;
+    if (after === before) return undefined;
     return (level[after]! - level[before]!) / Math.log10(offsets[after]! / offsets[before]!);
   });
 }

@@ -6,7 +6,8 @@
  * mean(v1 (C v' - i_L)) = 1, since v1 = L times the derivative of the sensitivity to flux. By the
  * Cauchy-Schwarz inequality mean(v1^2) >= 1 / mean((C v' - i_L)^2), the noise of the loss conductance is
  * 4kT/R times that, and the sum above is the mean over that of the fundamental alone. r is Groszkowski's
- * law. The figure of merit takes Q = 2 pi f R C and the fundamental's power.
+ * law. The figure of merit takes Q = 2 pi f R C and the fundamental's power. Harmonic k counts with about
+ * k^2 / 4: leave out those that are not resolved, whose rounding would be counted as distortion.
  *
  * @param harmonics peak of V_1, V_2, ... of the tank voltage [V], shape (n,); without the mean, which an
  *   inductor cannot hold

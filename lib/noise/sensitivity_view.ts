@@ -55,6 +55,8 @@ export interface SensitivityView {
   readonly sensitivity: Float64Array;
   /** Noise modulating function: the signed amplitude over its largest size [1], shape (m,). */
   readonly modulation: Float64Array;
+  /** Largest size of the one-sided amplitude over the period, of its largest row [A/sqrt(Hz)]. */
+  readonly largest: number;
   /** Sensitivity times modulation, shape (m,). */
   readonly effective: Float64Array;
   readonly rms: { readonly sensitivity: number; readonly effective: number };
@@ -86,26 +88,26 @@ export function sensitivityView(
   const along = new Float64Array(count);
   const size = new Float64Array(count);
   const b = new Float64Array(n);
-  // The source's direction is fixed by its rows; its sign is taken from the point of largest noise.
-  let direction: Float64Array | undefined;
+  // The sign of the modulation is taken against the point of largest noise.
+  let reference = new Float64Array(n);
   let largest = 0;
   for (let k = 0; k < count; k++) {
     source.inject(states.subarray(k * n, (k + 1) * n), b);
-    const norm = b.reduce((most, entry) => Math.max(most, Math.abs(entry)), 0);
+    const norm = sizeOf(b);
     if (norm > largest) {
       largest = norm;
-      direction = b.map((entry) => entry / norm);
+      reference = b.map((entry) => entry / norm);
     }
   }
-  const unit = direction ?? new Float64Array(n);
-  const square = unit.reduce((sum, entry) => sum + entry * entry, 0) || 1;
   for (let k = 0; k < count; k++) {
     source.inject(states.subarray(k * n, (k + 1) * n), b);
+    // Where several rows share the noise in turns, its direction moves; without noise it is the reference's.
+    const norm = sizeOf(b);
+    const own = norm * (b.reduce((sum, entry, j) => sum + entry * reference[j]!, 0) < 0 ? -1 : 1);
     for (let j = 0; j < n; j++) {
-      along[k]! += v[k * n + j]! * unit[j]! * scale.factor;
-      size[k]! += b[j]! * unit[j]! / square;
+      along[k]! += v[k * n + j]! * (norm > 0 ? b[j]! / own : reference[j]!) * scale.factor;
     }
-    if (largest > 0) size[k]! /= largest;
+    size[k] = norm > 0 ? own / largest : 0;
   }
   const effective = along.map((value, k) => value * size[k]!);
   const mean = (values: Float64Array) =>
@@ -132,8 +134,13 @@ export function sensitivityView(
     sensitivity: along,
     modulation: size,
     effective,
+    largest,
     rms: { sensitivity: rms(along), effective: rms(effective) },
     mean: { sensitivity: mean(along), effective: mean(effective) },
     foldings,
   };
+}
+
+function sizeOf(b: Float64Array): number {
+  return b.reduce((most, entry) => Math.max(most, Math.abs(entry)), 0);
 }

@@ -98,7 +98,7 @@ export function contract<Design>(
       system.inputs!.forEach(({ name }, k) => {
         system.evaluateInput!(k, x, { dq, df });
         const nominal = inputValue(circuit, name);
-        const step = 0.02 * Math.max(Math.abs(nominal), 0.05 * (nominal === 0 ? 1 : 0));
+        const step = 0.01 * Math.max(Math.abs(nominal), 0.05 * (nominal === 0 ? 1 : 0));
         const along = (read: "q" | "f", i: number) =>
           derivative(
             (value) => {

@@ -25,7 +25,7 @@ function read(path: readonly (string | number)[], value: unknown): () => unknown
 Deno.test("technologyCardFrom reads the shipped card in SI", () => {
   const card = illustrativeCard();
   assert(card.illustrative);
-  assertEquals(card.supply, { nominal: 1, lowest: 0.9, highest: 1.2 });
+  assertEquals(card.supply, { nominal: 1, lowest: 0.7, highest: 1.2 });
   assertClose(card.temperature.lowest, 233.15, { rtol: 1e-14, atol: 0 });
   const n = card.transistors.find((t) => t.kind === "n" && t.flavour === "regular")!;
   assertClose(
@@ -123,12 +123,15 @@ Deno.test("technologyCardFrom refuses values that make no transistor or no range
 Deno.test("technologyCardFrom and the schema file know the same fields, units and words", () => {
   type Node = Record<string, unknown>;
   let quantities = 0;
+  const isOptional = (shape: Shape) => !isGroup(shape) && shape.field === "optional";
   const compare = (shape: Shape, node: Node, path: string): void => {
     if (isGroup(shape)) {
       const names = Object.keys(shape).map(fileName);
+      const needed = Object.entries(shape).filter(([, inner]) => !isOptional(inner))
+        .map(([name]) => fileName(name));
       assertEquals(node.additionalProperties, false, path);
       assertEquals(node.type, "object", path);
-      assertEquals([...node.required as string[]].sort(), [...names].sort(), path);
+      assertEquals([...node.required as string[]].sort(), [...needed].sort(), path);
       assertEquals(Object.keys(node.properties as Node).sort(), [...names].sort(), path);
       for (const [name, inner] of Object.entries(shape)) {
         const next = (node.properties as Record<string, Node>)[fileName(name)]!;
@@ -147,6 +150,8 @@ Deno.test("technologyCardFrom and the schema file know the same fields, units an
         return;
       case "word":
         return assertEquals(node.enum, [...shape.words], path);
+      case "optional":
+        return compare(shape.of, node, path);
       case "list":
         assertEquals(node.type, "array", path);
         return compare(shape.of, node.items as Node, `${path}[]`);
@@ -163,4 +168,38 @@ Deno.test("technologyCardFrom and the schema accept the shipped card and refuse 
   assert(validate(illustrativeData()), JSON.stringify(validate.errors));
   assert(!validate(changed(["transistors", 0, "surprise"], "1")));
   assert(!validate(changed(["passives", "corners", "fast"], undefined)));
+});
+
+Deno.test("technologyCardFrom reads a card without varactors and bank, and one with half of them", () => {
+  const without = technologyCardFrom(changed(["varactors"], undefined), parseQuantity);
+  assert(without.varactors === undefined && without.capacitorBank !== undefined);
+  const half = technologyCardFrom(changed(["varactors", "junction"], undefined), parseQuantity);
+  assert(half.varactors?.junction === undefined && half.varactors?.accumulation !== undefined);
+  const validate = new Ajv({ strict: true }).compile(cardSchema());
+  assert(validate(changed(["varactors"], undefined)));
+  assert(validate(changed(["varactors", "junction"], undefined)));
+  assert(!validate(changed(["varactors", "corners"], undefined)));
+});
+
+Deno.test("technologyCardFrom refuses values that make no varactor or no bank", () => {
+  assertThrows(
+    read(["varactors", "junction", "grading"], "1.2"),
+    RangeError,
+    /varactors\.junction\.grading: expected a number < 1, got 1.2/,
+  );
+  assertThrows(
+    read(["varactors", "accumulation", "minimum_capacitance"], "13 fF/um^2"),
+    RangeError,
+    /varactors\.accumulation: expected minimum_capacitance <= maximum_capacitance/,
+  );
+  assertThrows(
+    read(["capacitor_bank", "plate_fraction"], "1"),
+    RangeError,
+    /capacitor_bank\.plate_fraction: expected a number < 1/,
+  );
+  assertThrows(
+    read(["varactors", "junction", "emission"], undefined),
+    TypeError,
+    /varactors\.junction\.emission: expected a value, got no such field/,
+  );
 });

@@ -14,7 +14,7 @@ const MASK = maskFrom([
   {
     from: 2e7,
     to: Infinity,
-    level: -150,
+    level: -148,
     slope: 0,
     origin: { label: "far", basis: "given" },
   },

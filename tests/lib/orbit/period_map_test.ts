@@ -1,5 +1,6 @@
 import { assert, assertClose } from "../../assert.ts";
 import { GaussStepper } from "../../../lib/orbit/gauss_step.ts";
+import { odeSystem } from "../../../lib/orbit/ode_system.ts";
 import type { Orbit } from "../../../lib/orbit/orbit.ts";
 import { phaseSensitivity } from "../../../lib/orbit/phase_sensitivity.ts";
 import { orbitOf, rossler, vanDerPol } from "./_systems.ts";
@@ -85,4 +86,30 @@ Deno.test("PeriodMap: the adjoint closes over the period as the map's translatio
   const orbit = orbitOf(system, { start, tolerance: 1e-12 });
   const { at } = phaseSensitivity(orbit);
   assertClose(at(orbit.period * (1 - 1e-9)), at(0), { rtol: 1e-6, atol: 1e-7 });
+});
+
+Deno.test("PeriodMap: a full pass allocates nothing per step", () => {
+  // Van der Pol's equation again, written so that it allocates nothing itself.
+  const system = odeSystem({
+    dimension: 2,
+    flow: (x, into) => {
+      into[0] = x[1]!;
+      into[1] = (1 - x[0]! * x[0]!) * x[1]! - x[0]!;
+    },
+    jacobian: (x, into) => {
+      into[0] = 0;
+      into[1] = 1;
+      into[2] = -2 * x[0]! * x[1]! - 1;
+      into[3] = 1 - x[0]! * x[0]!;
+    },
+  });
+  const steps = 80;
+  const { map } = orbitOf(system, { start: Float64Array.of(2, 0), steps }).discrete;
+  const passes = 1000;
+  // Compiled code first; what is left is a few objects a pass, whatever the number of steps.
+  for (let k = 0; k < 2 * passes; k++) map.linearise();
+  const before = Deno.memoryUsage().heapUsed;
+  for (let k = 0; k < passes; k++) map.linearise();
+  const perStep = (Deno.memoryUsage().heapUsed - before) / (passes * steps);
+  assert(perStep < 24, `${perStep} bytes a step`);
 });
