@@ -1,40 +1,26 @@
 /**
- * The smallest inductance that still starts, over a family of inductors at a fixed frequency, and the
- * map of inductance against bias current behind it.
+ * The smallest inductance that still starts, over a family of inductors at a fixed frequency and a
+ * programmed current.
  *
  * @module
  */
 import type { BuiltOscillator, Condition, TankDesign, Topology } from "../circuit/topology.ts";
 import type { TechnologyCard } from "../device/technology_card.ts";
-import { type BiasSweep, biasSweep } from "./bias.ts";
-import { startup } from "./startup.ts";
+import { Orbit } from "../orbit/orbit.ts";
+import type { FamilyMember, InductorFamily } from "./inductor_family.ts";
+import { oscillation } from "./oscillation.ts";
+import { type Startup, startup } from "./startup.ts";
 
-const CAPACITANCE_ITERATIONS = 12;
-/** Relative accuracy of the frequency to which the capacitance is trimmed. */
-const FREQUENCY_TOLERANCE = 1e-6;
+const TRIM_ITERATIONS = 12;
+/** Relative accuracy of the capacitance to which the frequency is trimmed. */
+const TRIM_TOLERANCE = 1e-6;
+/** Inductances at which a family without gaps is looked at before a boundary is closed in on. */
+const SCAN_POINTS = 13;
 const ROOT_ITERATIONS = 40;
-/** Relative accuracy of the smallest inductance and of the boundary currents. */
+/** Relative accuracy of the smallest inductance and of the boundaries. */
 const ROOT_TOLERANCE = 1e-4;
 /** Relative step of the quality factor for the sensitivity of the answer. */
 const QUALITY_STEP = 0.02;
-
-/** A member of a family of inductors. */
-export interface FamilyMember {
-  /** Quality factor of the coil at the frequency asked for [1]. */
-  readonly quality: number;
-  /** Self-resonance [Hz]; Infinity where the family does not know it. */
-  readonly selfResonance: number;
-}
-
-/** A family of inductors: what a coil of a given inductance is like at the frequency. */
-export interface InductorFamily {
-  readonly name: string;
-  /** Smallest and largest inductance the family offers [H]. */
-  readonly smallest: number;
-  readonly largest: number;
-  /** The member with a differential inductance [H]. */
-  member(inductance: number): FamilyMember;
-}
 
 /** What binds the answer. */
 export type BindingLimit =
@@ -57,9 +43,9 @@ export interface InductanceOptions<Design> {
   readonly conditions: readonly [Condition, ...Condition[]];
   /** Startup loop gain asked for at the worst condition [1]. */
   readonly loopGain: number;
-  /** Quality factor of the capacitance [1]. */
+  /** Quality factor of the capacitor between the outputs [1]. */
   readonly capacitorQuality: number;
-  /** Least trimmed capacitance between the outputs, what tuning needs [F]. */
+  /** Least capacitance left for that capacitor, what tuning needs [F]. */
   readonly leastCapacitance: number;
   /** Self-resonance over frequency that the coil must keep [1]. */
   readonly resonanceRatio: number;
@@ -67,112 +53,161 @@ export interface InductanceOptions<Design> {
   readonly mostPower: number;
 }
 
-/** A tank trimmed to the frequency. */
-export interface TrimmedTank {
-  readonly tank: TankDesign;
-  /** Quality factor of the coil alone [1]. */
-  readonly coilQuality: number;
-  readonly selfResonance: number;
+/** One inductance at one programmed current. */
+export interface InductancePoint {
+  /** [H] */
+  readonly inductance: number;
+  /** [A] */
+  readonly current: number;
 }
 
-/** One inductance at one current. */
-export interface InductanceCheck {
-  readonly inductance: number;
-  readonly current: number;
+/** A tank trimmed to the frequency. */
+export interface TrimmedTank {
+  /** Its capacitance holds the coil's own and the capacitor. */
+  readonly tank: TankDesign;
+  readonly member: FamilyMember;
+  /** What is left for the capacitor: trimmed, less the coil's own [F]; negative where nothing is. */
+  readonly capacitanceLeft: number;
+}
+
+/** One inductance at one current, judged by every limit. */
+export interface InductanceCheck extends InductancePoint {
   readonly trimmed: TrimmedTank;
-  /** Startup loop gain at the worst condition [1]. */
+  /** Startup loop gain at the worst condition [1]; 0 where there is no equilibrium or no tank. */
   readonly worstLoopGain: number;
   readonly worstCondition: Condition;
-  /** Supply power at the nominal operating point [W]. */
-  readonly power: number;
+  /**
+   * Supply power at the nominal condition: the mean over the orbit, at rest where there is none;
+   * undefined where there is neither [W].
+   */
+  readonly power: number | undefined;
   /** Limits that are not kept, startup among them. */
   readonly broken: readonly BindingLimit[];
 }
 
 /**
  * The tank of an inductance, its capacitance trimmed so that the oscillator's port is resistive at the
- * frequency, at the nominal condition and a current.
+ * frequency, at the nominal condition and a current, with 1/Q = 1/Q_coil + (C_left/C) / Q_capacitor.
  *
- * @returns the tank; its capacitance is negative where the devices' own is already too much
+ * The devices' own capacitance counts as lossless beside their conductance.
+ *
+ * @throws {RangeError} when the frequency or the capacitor's quality factor is not positive
  */
 export function trimTank<Design>(
   topology: Topology<Design>,
-  { inductance, current }: { readonly inductance: number; readonly current: number },
+  { inductance, current }: InductancePoint,
   options: InductanceOptions<Design>,
 ): TrimmedTank {
   const { family, frequency, capacitorQuality, designWith, card, conditions } = options;
-  const { quality: coilQuality, selfResonance } = family.member(inductance);
+  if (!(frequency > 0 && capacitorQuality > 0)) {
+    throw new RangeError(
+      "Cannot trim the tank: frequency and the capacitor's quality factor must be > 0, got " +
+        `${frequency} Hz and ${capacitorQuality}`,
+    );
+  }
+  const member = family.member(inductance);
   const whole = 1 / ((2 * Math.PI * frequency) ** 2 * inductance);
-  const quality = 1 / (1 / coilQuality + 1 / capacitorQuality);
-  const tankWith = (capacitance: number): TankDesign => ({
-    inductance,
-    quality,
-    qualityFrequency: frequency,
-    capacitance,
-  });
+  const tankWith = (capacitance: number): TankDesign => {
+    const share = Math.max(0, capacitance - member.capacitance) / whole;
+    return {
+      inductance,
+      quality: 1 / (1 / member.quality + share / capacitorQuality),
+      qualityFrequency: frequency,
+      capacitance,
+    };
+  };
   // The port's frequency answers to the capacitance as f^2 ~ 1/(C + own), own being what to find.
   let own = 0;
-  for (let iteration = 0; iteration < CAPACITANCE_ITERATIONS; iteration++) {
+  for (let iteration = 0; iteration < TRIM_ITERATIONS; iteration++) {
     const capacitance = whole - own;
-    if (!(capacitance > 0)) break;
+    if (!(capacitance > member.capacitance)) break;
     const design = topology.withCurrent(designWith(tankWith(capacitance)), current);
     const started = startup(topology.build(design, { card, condition: conditions[0] }));
     if (started.status !== "found") break;
     const total = 1 / ((2 * Math.PI * started.frequency) ** 2 * inductance);
     const change = total - capacitance - own;
     own += change;
-    if (Math.abs(change) < FREQUENCY_TOLERANCE * whole) break;
+    if (Math.abs(change) < TRIM_TOLERANCE * whole) break;
   }
-  return { tank: tankWith(whole - own), coilQuality, selfResonance };
+  const tank = tankWith(whole - own);
+  return { tank, member, capacitanceLeft: tank.capacitance - member.capacitance };
 }
 
-/**
- * Checks one inductance at one programmed current against every limit.
- *
- * @throws RangeError where an operating point cannot be found
- */
-export function checkInductance<Design>(
+interface NominalStart {
+  readonly oscillator: BuiltOscillator;
+  readonly started: Startup;
+}
+
+type WorstStart = Pick<
+  InductanceCheck,
+  "inductance" | "current" | "trimmed" | "worstLoopGain" | "worstCondition"
+> & { readonly nominal: NominalStart | undefined };
+
+/** The trimmed tank and the worst startup of one point. */
+function worstStart<Design>(
   topology: Topology<Design>,
-  point: { readonly inductance: number; readonly current: number },
+  point: InductancePoint,
   options: InductanceOptions<Design>,
-): InductanceCheck {
-  const { frequency, leastCapacitance, resonanceRatio, mostPower, loopGain, family } = options;
+): WorstStart {
+  const { card, conditions, designWith } = options;
   const trimmed = trimTank(topology, point, options);
-  const capacitance = trimmed.tank.capacitance;
+  const result = { ...point, trimmed, worstLoopGain: 0, worstCondition: conditions[0] };
+  if (!(trimmed.capacitanceLeft > 0)) return { ...result, nominal: undefined };
+  const design = topology.withCurrent(designWith(trimmed.tank), point.current);
+  let nominal: NominalStart | undefined;
   let worstLoopGain = Infinity;
-  let worstCondition = options.conditions[0];
-  let power = NaN;
-  if (capacitance > 0) {
-    const design = topology.withCurrent(options.designWith(trimmed.tank), point.current);
-    for (const condition of options.conditions) {
-      const oscillator = topology.build(design, { card: options.card, condition });
-      const started = startup(oscillator);
-      const gain = started.status === "found" ? started.loopGain : 0;
-      if (started.status === "found" && condition === options.conditions[0]) {
-        power = quiescentPower(oscillator, started.equilibrium.state, condition);
-      }
-      if (gain < worstLoopGain) {
-        worstLoopGain = gain;
-        worstCondition = condition;
-      }
+  let worstCondition: Condition = conditions[0];
+  for (const condition of conditions) {
+    const oscillator = topology.build(design, { card, condition });
+    const started = startup(oscillator);
+    const gain = started.status === "found" ? started.loopGain : 0;
+    if (started.status === "found" && condition === conditions[0]) {
+      nominal = { oscillator, started };
+    }
+    if (gain < worstLoopGain) {
+      worstLoopGain = gain;
+      worstCondition = condition;
     }
   }
-  const broken: BindingLimit[] = [];
-  if (!(worstLoopGain >= loopGain) || worstLoopGain === Infinity) broken.push("startup");
-  if (!(capacitance >= leastCapacitance)) broken.push("fixed capacitance");
-  if (!(trimmed.selfResonance >= resonanceRatio * frequency)) broken.push("self-resonance");
-  if (!(power <= mostPower) && !Number.isNaN(power)) broken.push("power");
-  if (point.inductance < family.smallest) broken.push("smallest of the family");
-  if (point.inductance > family.largest) broken.push("largest of the family");
-  return { ...point, trimmed, worstLoopGain, worstCondition, power, broken };
+  return { ...result, worstLoopGain, worstCondition, nominal };
 }
 
-function quiescentPower(
-  oscillator: BuiltOscillator,
-  state: Float64Array,
-  { supply }: Condition,
+/** Startup loop gain at the worst condition, the tank trimmed at that current [1]; 0 where nothing starts. */
+export function worstLoopGain<Design>(
+  topology: Topology<Design>,
+  point: InductancePoint,
+  options: InductanceOptions<Design>,
 ): number {
-  return supply * oscillator.supplyCurrent(state);
+  return worstStart(topology, point, options).worstLoopGain;
+}
+
+/** Checks one inductance at one programmed current against every limit. */
+export function checkInductance<Design>(
+  topology: Topology<Design>,
+  point: InductancePoint,
+  options: InductanceOptions<Design>,
+): InductanceCheck {
+  const { nominal, ...start } = worstStart(topology, point, options);
+  const { frequency, leastCapacitance, resonanceRatio, mostPower, loopGain, family } = options;
+  const { member, capacitanceLeft } = start.trimmed;
+  const power = nominal && powerOf(nominal, options.conditions[0].supply);
+  const broken: BindingLimit[] = [];
+  if (!(start.worstLoopGain >= loopGain)) broken.push("startup");
+  if (!(capacitanceLeft > 0 && capacitanceLeft >= leastCapacitance)) {
+    broken.push("fixed capacitance");
+  }
+  if (!(member.selfResonance >= resonanceRatio * frequency)) broken.push("self-resonance");
+  if (power !== undefined && !(power <= mostPower)) broken.push("power");
+  if (point.inductance < family.smallest) broken.push("smallest of the family");
+  if (point.inductance > family.largest) broken.push("largest of the family");
+  return { ...start, power, broken };
+}
+
+function powerOf({ oscillator, started }: NominalStart, supply: number): number {
+  const orbit = oscillation(oscillator, { started });
+  const current = (x: Float64Array) => oscillator.supplyCurrent(x);
+  return supply *
+    (orbit instanceof Orbit ? orbit.mean(current) : current(started.equilibrium.state));
 }
 
 /** The smallest inductance and what it rests on. */
@@ -181,17 +216,21 @@ export interface InductanceAnswer {
   readonly check: InductanceCheck;
   /** What keeps a smaller one from being used. */
   readonly binding: BindingLimit;
-  /** d ln L / d ln Q of the coil [1]: -1 when the parallel resistance alone decides. */
-  readonly qualitySensitivity: number;
+  /**
+   * d ln L / d ln Q of the coil [1]: -1 when the parallel resistance alone decides; undefined where the
+   * family's end or its steps decide.
+   */
+  readonly qualitySensitivity: number | undefined;
 }
 
 /** Why no inductance of the family does. */
 export interface NoInductance {
   readonly status: "none";
+  /** What would have to give way. */
   readonly binding: BindingLimit;
   /** In words. */
   readonly reason: string;
-  /** The largest that could be tried. */
+  /** The one that comes nearest to starting. */
   readonly check: InductanceCheck;
 }
 
@@ -199,8 +238,10 @@ export interface NoInductance {
  * The smallest inductance of the family whose startup loop gain at the worst condition reaches the one
  * asked for at a programmed current, within power, capacitance and self-resonance limits.
  *
- * The worst loop gain is taken to rise with inductance over the family, which a rising parallel
- * resistance gives; the bisection's end is checked against its neighbours.
+ * A family without gaps is looked at in thirteen places before the boundary is closed in on to 1e-4, so a
+ * loop gain that does not rise all the way with inductance does no harm. A larger coil has less
+ * capacitance left and a lower self-resonance and draws no less, so one that breaks those limits where
+ * it first starts has none above it.
  *
  * @param current programmed current [A]
  */
@@ -210,25 +251,50 @@ export function smallestInductance<Design>(
   options: InductanceOptions<Design>,
 ): InductanceAnswer | NoInductance {
   const bound = smallestStarting(topology, current, options);
-  const { check } = bound;
+  const { inductance } = bound;
+  const check = checkInductance(topology, { inductance, current }, options);
   if (check.broken.length > 0) {
-    const [binding = "startup"] = check.broken;
-    return {
-      status: "none",
-      binding,
-      check,
-      reason: reasonOf(check, options),
-    };
+    const [limit = "startup"] = check.broken.filter((name) => name !== "startup");
+    const binding = bound.starts ? limit : bound.end;
+    return { status: "none", binding, check, reason: brokenText(check, options) };
   }
-  const higher = smallestStarting(topology, current, withQuality(options, 1 + QUALITY_STEP));
-  const lower = smallestStarting(topology, current, withQuality(options, 1 - QUALITY_STEP));
+  const moved = bound.atEdge || options.family.inductances
+    ? []
+    : [1 + QUALITY_STEP, 1 - QUALITY_STEP].map((factor) =>
+      smallestStarting(topology, current, withQuality(options, factor))
+    ).filter(({ starts, atEdge }) => starts && !atEdge);
+  const [higher, lower] = moved;
   const span = Math.log((1 + QUALITY_STEP) / (1 - QUALITY_STEP));
   return {
     status: "found",
     check,
     binding: bound.atEdge ? "smallest of the family" : "startup",
-    qualitySensitivity: Math.log(higher.check.inductance / lower.check.inductance) / span,
+    qualitySensitivity: higher && lower
+      ? Math.log(higher.inductance / lower.inductance) / span
+      : undefined,
   };
+}
+
+/**
+ * The smallest of a list of inductances that keeps every limit, each tried in turn: what
+ * {@linkcode smallestInductance} must agree with.
+ *
+ * @param current programmed current [A]
+ * @returns undefined where none does
+ */
+export function smallestByTrial<Design>(
+  topology: Topology<Design>,
+  current: number,
+  { inductances, ...options }: InductanceOptions<Design> & {
+    /** To be tried, rising [H]. */
+    readonly inductances: readonly number[];
+  },
+): InductanceCheck | undefined {
+  for (const inductance of inductances) {
+    const check = checkInductance(topology, { inductance, current }, options);
+    if (check.broken.length === 0) return check;
+  }
+  return undefined;
 }
 
 function withQuality<Design>(
@@ -236,145 +302,110 @@ function withQuality<Design>(
   factor: number,
 ): InductanceOptions<Design> {
   const { family } = options;
-  return {
-    ...options,
-    family: {
-      ...family,
-      member: (inductance) => {
-        const { quality, selfResonance } = family.member(inductance);
-        return { quality: quality * factor, selfResonance };
-      },
-    },
+  const member = (inductance: number) => {
+    const own = family.member(inductance);
+    return { ...own, quality: own.quality * factor };
   };
+  return { ...options, family: { ...family, member } };
 }
 
-/** The smallest inductance that starts, or the largest of the family when none does. */
+interface Boundary {
+  readonly inductance: number;
+  readonly starts: boolean;
+  /** Whether the smallest of the family starts. */
+  readonly atEdge: boolean;
+  /** What ends the family where none starts. */
+  readonly end: "fixed capacitance" | "largest of the family";
+}
+
+/** The smallest inductance that starts, whatever the other limits, or the one nearest to it. */
 function smallestStarting<Design>(
   topology: Topology<Design>,
   current: number,
   options: InductanceOptions<Design>,
-): { check: InductanceCheck; atEdge: boolean } {
-  const { smallest, largest } = options.family;
-  const at = (inductance: number) => checkInductance(topology, { inductance, current }, options);
-  const starts = (check: InductanceCheck) => !check.broken.includes("startup");
-  const first = at(smallest);
-  if (starts(first)) return { check: first, atEdge: true };
-  // Where the devices' capacitance is too much, no larger inductance can follow: step back from there.
-  let high = largest;
-  let check = at(high);
-  for (let k = 0; k < ROOT_ITERATIONS && !(check.trimmed.tank.capacitance > 0); k++) {
-    high = Math.sqrt(high * smallest);
-    check = at(high);
-  }
-  if (!starts(check)) return { check, atEdge: false };
-  let low = smallest;
-  for (let k = 0; k < ROOT_ITERATIONS && high / low > 1 + ROOT_TOLERANCE; k++) {
-    const middle = Math.sqrt(low * high);
-    const candidate = at(middle);
-    if (starts(candidate)) {
-      high = middle;
-      check = candidate;
-    } else {
-      low = middle;
+): Boundary {
+  const at = (inductance: number) => {
+    const { worstLoopGain: gain, trimmed } = worstStart(
+      topology,
+      { inductance, current },
+      options,
+    );
+    return { starts: gain >= options.loopGain, possible: trimmed.capacitanceLeft > 0, gain };
+  };
+  let best = { inductance: options.family.smallest, gain: -Infinity };
+  let below: number | undefined;
+  for (const inductance of scanned(options.family)) {
+    const { starts, possible, gain } = at(inductance);
+    if (gain > best.gain) best = { inductance, gain };
+    const whole = { atEdge: below === undefined, end: "largest of the family" } as const;
+    if (options.family.inductances && starts) return { inductance, starts, ...whole };
+    if (starts && below === undefined) return { inductance, starts, ...whole };
+    if (starts && below !== undefined) {
+      const { high } = closeIn({ low: below, high: inductance }, (L) => at(L).starts);
+      return { inductance: high, starts, ...whole };
     }
+    if (!possible) {
+      const end = "fixed capacitance" as const;
+      if (below === undefined || options.family.inductances) {
+        return { inductance: best.inductance, starts: false, atEdge: false, end };
+      }
+      // The last inductance with any capacitance left may be the first that starts.
+      const { low: last } = closeIn({ low: below, high: inductance }, (L) => !at(L).possible);
+      if (!at(last).starts) return { inductance: last, starts: false, atEdge: false, end };
+      const { high } = closeIn({ low: below, high: last }, (L) => at(L).starts);
+      return { inductance: high, starts: true, atEdge: false, end };
+    }
+    below = inductance;
   }
-  return { check, atEdge: false };
+  const { inductance } = best;
+  return { inductance, starts: false, atEdge: false, end: "largest of the family" };
 }
 
-function reasonOf<Design>(
-  { broken, worstLoopGain, power, trimmed, inductance }: InductanceCheck,
-  { loopGain, mostPower, leastCapacitance, resonanceRatio, frequency }: InductanceOptions<Design>,
+function scanned({ smallest, largest, inductances }: InductorFamily): readonly number[] {
+  return inductances ?? Array.from(
+    { length: SCAN_POINTS },
+    (_, k) => k === SCAN_POINTS - 1 ? largest : smallest * (largest / smallest) ** (k / 12),
+  );
+}
+
+/** Closes in on where `holds` turns true between a low end where it does not and a high end where it does. */
+export function closeIn(
+  ends: { readonly low: number; readonly high: number },
+  holds: (value: number) => boolean,
+): { low: number; high: number } {
+  let { low, high } = ends;
+  for (let k = 0; k < ROOT_ITERATIONS && high / low > 1 + ROOT_TOLERANCE; k++) {
+    const middle = Math.sqrt(low * high);
+    if (holds(middle)) high = middle;
+    else low = middle;
+  }
+  return { low, high };
+}
+
+/** The limits that a check breaks, with their figures, in words. */
+export function brokenText<Design>(
+  { broken, worstLoopGain: gain, power = NaN, trimmed, inductance, current }: InductanceCheck,
+  options: InductanceOptions<Design>,
 ): string {
+  const { loopGain, mostPower, leastCapacitance, resonanceRatio, frequency } = options;
+  const short = (value: number) => String(Number(value.toPrecision(3)));
   const parts = broken.map((limit) => {
     switch (limit) {
       case "startup":
-        return `the loop gain is ${worstLoopGain.toPrecision(3)}, ${loopGain} is asked for`;
+        return `the loop gain is ${short(gain)}, ${loopGain} is asked for`;
       case "power":
-        return `the power is ${power.toPrecision(3)} W, at most ${mostPower} W is allowed`;
+        return `the power is ${short(power * 1e3)} mW, at most ${short(mostPower * 1e3)} mW`;
       case "fixed capacitance":
-        return `${
-          trimmed.tank.capacitance.toPrecision(3)
-        } F is left for the capacitor, ${leastCapacitance} F is needed`;
+        return `${short(trimmed.capacitanceLeft * 1e15)} fF is left for the capacitor, ${
+          short(leastCapacitance * 1e15)
+        } fF is needed`;
       case "self-resonance":
-        return `the coil resonates at ${trimmed.selfResonance.toPrecision(3)} Hz, ${
-          (resonanceRatio * frequency).toPrecision(3)
-        } Hz is needed`;
+        return `the coil resonates at ${short(trimmed.member.selfResonance / 1e9)} GHz, ${
+          short(resonanceRatio * frequency / 1e9)
+        } GHz is needed`;
       default:
-        return `the inductance is outside the family`;
+        return "the family has no such coil";
     }
   });
-  return `at ${inductance.toPrecision(3)} H ${parts.join("; ")}`;
-}
-
-/** One column of the map: a sweep of the current at one inductance. */
-export interface InductanceColumn {
-  readonly inductance: number;
-  readonly trimmed: TrimmedTank;
-  readonly sweep: BiasSweep;
-  /** Programmed current at which the worst loop gain reaches the one asked for [A]; undefined outside. */
-  readonly startupCurrent: number | undefined;
-  /** Programmed current at which the power limit is reached [A]; undefined outside. */
-  readonly powerCurrent: number | undefined;
-  /** Limits of the coil that this inductance breaks whatever the current. */
-  readonly broken: readonly BindingLimit[];
-}
-
-/**
- * One column of the map of inductance against bias current; the map is a list of these, one per
- * inductance, so that a caller can show progress and stop between them.
- *
- * @param currents programmed currents, increasing [A]
- * @param offset of the phase noise [Hz]
- */
-export function inductanceColumn<Design>(
-  topology: Topology<Design>,
-  inductance: number,
-  { currents, offset, kneeExponent, ...options }: InductanceOptions<Design> & {
-    readonly currents: readonly number[];
-    readonly offset: number;
-    readonly kneeExponent?: number;
-  },
-): InductanceColumn | undefined {
-  const middle = currents[Math.floor(currents.length / 2)] ?? NaN;
-  const trimmed = trimTank(topology, { inductance, current: middle }, options);
-  if (!(trimmed.tank.capacitance > 0)) return undefined;
-  const sweep = biasSweep(topology, options.designWith(trimmed.tank), {
-    card: options.card,
-    condition: options.conditions[0],
-    currents,
-    offset,
-    ...(kneeExponent === undefined ? {} : { kneeExponent }),
-  });
-  const check = (current: number) => checkInductance(topology, { inductance, current }, options);
-  const broken = check(middle).broken.filter((limit) => limit !== "startup" && limit !== "power");
-  return {
-    inductance,
-    trimmed,
-    sweep,
-    startupCurrent: crossing(
-      currents,
-      (current) => check(current).worstLoopGain / options.loopGain - 1,
-    ),
-    powerCurrent: crossing(
-      currents,
-      (current) => check(current).power / options.mostPower - 1,
-    ),
-    broken,
-  };
-}
-
-/** Where a rising function of the current passes zero, by bisection in ln I; undefined outside. */
-function crossing(
-  currents: readonly number[],
-  value: (current: number) => number,
-): number | undefined {
-  let low = currents[0] ?? NaN;
-  let high = currents[currents.length - 1] ?? NaN;
-  if (!(value(low) < 0 && value(high) >= 0)) return undefined;
-  for (let k = 0; k < ROOT_ITERATIONS && high / low > 1 + ROOT_TOLERANCE; k++) {
-    const middle = Math.sqrt(low * high);
-    if (value(middle) < 0) low = middle;
-    else high = middle;
-  }
-  return high;
+  return `at ${short(inductance * 1e9)} nH and ${short(current * 1e3)} mA ${parts.join("; ")}`;
 }

@@ -1,11 +1,17 @@
 import type { BuiltOscillator } from "../circuit/topology.ts";
 import type { Equilibrium } from "../orbit/equilibrium.ts";
 import { findOrbit, type FindOrbitOptions } from "../orbit/find_orbit.ts";
-import type { OrbitResult } from "../orbit/orbit.ts";
+import { Orbit, type OrbitResult } from "../orbit/orbit.ts";
+import { orbitFailure } from "../orbit/orbit_failure.ts";
 import type { Startup } from "./startup.ts";
 
 /** Most time steps spent on a kick: a motion that dies out shows it within a few hundred cycles. */
 const KICK_STEPS = 20_000;
+
+/** Most times a closed motion is suspected to run through its orbit. */
+const MOST_ROUNDS = 8;
+/** Two states closer than this part of the motion are the same. */
+const SAME = 1e-4;
 
 /** Options of {@linkcode oscillation}. */
 export interface OscillationOptions extends Pick<FindOrbitOptions, "tolerance" | "transientSteps"> {
@@ -23,20 +29,57 @@ export function oscillation(
   { circuit, kick }: BuiltOscillator,
   { started, tolerance, transientSteps }: OscillationOptions,
 ): OrbitResult {
-  const accuracy = tolerance === undefined ? {} : { tolerance };
-  const steps = transientSteps === undefined ? {} : { transientSteps };
-  if (started.starts || !kick) {
-    const start = tankFirst(started);
-    return findOrbit(circuit.system, { start, ...accuracy, ...steps });
-  }
-  const { state, period } = kick;
-  return findOrbit(circuit.system, {
-    start: state,
-    period,
-    transientSteps: KICK_STEPS,
-    ...accuracy,
-    ...steps,
+  const settings = {
+    ...(tolerance === undefined ? {} : { tolerance }),
+    ...(transientSteps === undefined ? {} : { transientSteps }),
+  };
+  const soft = started.starts || !kick;
+  const found = findOrbit(
+    circuit.system,
+    soft
+      ? { start: tankFirst(started), ...settings }
+      : { start: kick.state, period: kick.period, transientSteps: KICK_STEPS, ...settings },
+  );
+  const rounds = found instanceof Orbit ? roundsOf(found) : 1;
+  if (!(found instanceof Orbit) || rounds === 1) return found;
+  // Two or more rounds close as well as one: from a state on the orbit, the first return is one round.
+  const single = findOrbit(circuit.system, {
+    start: found.at(0),
+    period: found.period / rounds,
+    ...settings,
   });
+  if (!(single instanceof Orbit) || roundsOf(single) === 1) return single;
+  return orbitFailure(
+    "no convergence",
+    `the closed motion found runs through the orbit ${rounds} times, and a single round was not found`,
+    { work: single.work },
+  );
+}
+
+/** How many times a closed motion runs through the same states. */
+function roundsOf(orbit: Orbit): number {
+  const { times, states } = orbit.samples;
+  const n = orbit.system.dimension;
+  const range = Array.from({ length: n }, (_, j) => {
+    let [low, high] = [Infinity, -Infinity];
+    for (let k = 0; k < times.length; k++) {
+      const value = states[k * n + j] ?? NaN;
+      low = Math.min(low, value);
+      high = Math.max(high, value);
+    }
+    return high - low;
+  });
+  const scale = orbit.system.scale ?? new Float64Array(n).fill(1);
+  const largest = Math.max(...range.map((value, j) => value / (scale[j] ?? 1)));
+  const first = orbit.at(0);
+  for (let rounds = MOST_ROUNDS; rounds > 1; rounds--) {
+    const later = orbit.at(orbit.period / rounds);
+    const same = first.every((value, j) =>
+      Math.abs(value - (later[j] ?? NaN)) / (scale[j] ?? 1) < SAME * largest
+    );
+    if (same) return rounds;
+  }
+  return 1;
 }
 
 /** The equilibrium with the tank's pole in the first place, where the engine takes its direction from. */

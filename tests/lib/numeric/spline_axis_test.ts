@@ -95,7 +95,7 @@ Deno.test("SplineAxis goes on as a line far outside and keeps the first piece wh
 });
 
 Deno.test("SplineAxis of one, two and three points is a constant, a line and a parabola", () => {
-  assertClose(interpolant(() => 7, [0.3])(5).value, 7, { rtol: 0, atol: 0 });
+  assert(interpolant(() => 7, [0.3])(5).value === 7);
   assertClose(interpolant((x) => 2 * x, [0, 1])(0.3).value, 0.6, { rtol: 1e-14, atol: 0 });
   assertClose(interpolant((x) => x * x, [0, 1, 3])(2).value, 4, { rtol: 1e-14, atol: 0 });
 });
