@@ -138,10 +138,12 @@ interface NominalStart {
   readonly started: Startup;
 }
 
-type WorstStart = Pick<
-  InductanceCheck,
-  "inductance" | "current" | "trimmed" | "worstLoopGain" | "worstCondition"
-> & { readonly nominal: NominalStart | undefined };
+type WorstStart =
+  & Pick<
+    InductanceCheck,
+    "inductance" | "current" | "trimmed" | "worstLoopGain" | "worstCondition"
+  >
+  & { readonly nominal: NominalStart | undefined };
 
 /** The trimmed tank and the worst startup of one point. */
 function worstStart<Design>(

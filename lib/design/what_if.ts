@@ -12,8 +12,8 @@ import { oscillation } from "./oscillation.ts";
 import { type OperatingFigures, operatingFigures } from "./operating_figures.ts";
 import { type Startup, startup } from "./startup.ts";
 
-/** Relative step of a parameter for its derivative. */
-const DERIVATIVE_STEP = 0.01;
+/** Relative step of a parameter for its derivative: its square and the orbits' tolerance over it balance. */
+const DERIVATIVE_STEP = 0.002;
 /** A suggestion changes a parameter by at most this factor. */
 const LARGEST_CHANGE = 2;
 /** Derivatives below this promise nothing [dB per e-fold]. */
@@ -91,7 +91,7 @@ export interface WhatIf {
 
 /**
  * Derivatives of phase noise, amplitude, power and frequency by each parameter, from orbits
- * solved again at 1 % on either side, and for each parameter the change that would bring the asked
+ * solved again at 0.2 % on either side, and for each parameter the change that would bring the asked
  * improvement, at most by a factor of two, solved again.
  *
  * @param improvement how much lower the noise should be [dB], above zero
