@@ -4,16 +4,17 @@
  *
  * @module
  */
-import type { BuiltOscillator, Condition, TankDesign, Topology } from "../circuit/topology.ts";
-import type { TechnologyCard } from "../device/technology_card.ts";
-import { Orbit } from "../orbit/orbit.ts";
-import type { FamilyMember, InductorFamily } from "./inductor_family.ts";
-import { oscillation } from "./oscillation.ts";
-import { type Startup, startup } from "./startup.ts";
+import type { Topology } from "../circuit/topology.ts";
+import {
+  type BindingLimit,
+  brokenText,
+  checkInductance,
+  type InductanceCheck,
+  type InductanceOptions,
+  worstStart,
+} from "./inductance_check.ts";
+import type { InductorFamily } from "./inductor_family.ts";
 
-const TRIM_ITERATIONS = 12;
-/** Relative accuracy of the capacitance to which the frequency is trimmed. */
-const TRIM_TOLERANCE = 1e-6;
 /** Inductances at which a family without gaps is looked at before a boundary is closed in on. */
 const SCAN_POINTS = 13;
 const ROOT_ITERATIONS = 40;
@@ -21,196 +22,6 @@ const ROOT_ITERATIONS = 40;
 const ROOT_TOLERANCE = 1e-4;
 /** Relative step of the quality factor for the sensitivity of the answer. */
 const QUALITY_STEP = 0.02;
-
-/** What binds the answer. */
-export type BindingLimit =
-  | "startup"
-  | "power"
-  | "fixed capacitance"
-  | "self-resonance"
-  | "smallest of the family"
-  | "largest of the family";
-
-/** What is asked of the inductance. */
-export interface InductanceOptions<Design> {
-  readonly card: TechnologyCard;
-  readonly family: InductorFamily;
-  /** The design with a tank; everything but the tank is as given. */
-  readonly designWith: (tank: TankDesign) => Design;
-  /** [Hz] */
-  readonly frequency: number;
-  /** Conditions the startup is judged at; the first is the nominal one. */
-  readonly conditions: readonly [Condition, ...Condition[]];
-  /** Startup loop gain asked for at the worst condition [1]. */
-  readonly loopGain: number;
-  /** Quality factor of the capacitor between the outputs [1]. */
-  readonly capacitorQuality: number;
-  /** Least capacitance left for that capacitor, what tuning needs [F]. */
-  readonly leastCapacitance: number;
-  /** Self-resonance over frequency that the coil must keep [1]. */
-  readonly resonanceRatio: number;
-  /** Most power at the nominal condition [W]. */
-  readonly mostPower: number;
-}
-
-/** One inductance at one programmed current. */
-export interface InductancePoint {
-  /** [H] */
-  readonly inductance: number;
-  /** [A] */
-  readonly current: number;
-}
-
-/** A tank trimmed to the frequency. */
-export interface TrimmedTank {
-  /** Its capacitance holds the coil's own and the capacitor. */
-  readonly tank: TankDesign;
-  readonly member: FamilyMember;
-  /** What is left for the capacitor: trimmed, less the coil's own [F]; negative where nothing is. */
-  readonly capacitanceLeft: number;
-}
-
-/** One inductance at one current, judged by every limit. */
-export interface InductanceCheck extends InductancePoint {
-  readonly trimmed: TrimmedTank;
-  /** Startup loop gain at the worst condition [1]; 0 where there is no equilibrium or no tank. */
-  readonly worstLoopGain: number;
-  readonly worstCondition: Condition;
-  /**
-   * Supply power at the nominal condition: the mean over the orbit, at rest where there is none;
-   * undefined where there is neither [W].
-   */
-  readonly power: number | undefined;
-  /** Limits that are not kept, startup among them. */
-  readonly broken: readonly BindingLimit[];
-}
-
-/**
- * The tank of an inductance, its capacitance trimmed so that the oscillator's port is resistive at the
- * frequency, at the nominal condition and a current, with 1/Q = 1/Q_coil + (C_left/C) / Q_capacitor.
- *
- * The devices' own capacitance counts as lossless beside their conductance.
- *
- * @throws {RangeError} when the frequency or the capacitor's quality factor is not positive
- */
-export function trimTank<Design>(
-  topology: Topology<Design>,
-  { inductance, current }: InductancePoint,
-  options: InductanceOptions<Design>,
-): TrimmedTank {
-  const { family, frequency, capacitorQuality, designWith, card, conditions } = options;
-  if (!(frequency > 0 && capacitorQuality > 0)) {
-    throw new RangeError(
-      "Cannot trim the tank: frequency and the capacitor's quality factor must be > 0, got " +
-        `${frequency} Hz and ${capacitorQuality}`,
-    );
-  }
-  const member = family.member(inductance);
-  const whole = 1 / ((2 * Math.PI * frequency) ** 2 * inductance);
-  const tankWith = (capacitance: number): TankDesign => {
-    const share = Math.max(0, capacitance - member.capacitance) / whole;
-    return {
-      inductance,
-      quality: 1 / (1 / member.quality + share / capacitorQuality),
-      qualityFrequency: frequency,
-      capacitance,
-    };
-  };
-  // The port's frequency answers to the capacitance as f^2 ~ 1/(C + own), own being what to find.
-  let own = 0;
-  for (let iteration = 0; iteration < TRIM_ITERATIONS; iteration++) {
-    const capacitance = whole - own;
-    if (!(capacitance > member.capacitance)) break;
-    const design = topology.withCurrent(designWith(tankWith(capacitance)), current);
-    const started = startup(topology.build(design, { card, condition: conditions[0] }));
-    if (started.status !== "found") break;
-    const total = 1 / ((2 * Math.PI * started.frequency) ** 2 * inductance);
-    const change = total - capacitance - own;
-    own += change;
-    if (Math.abs(change) < TRIM_TOLERANCE * whole) break;
-  }
-  const tank = tankWith(whole - own);
-  return { tank, member, capacitanceLeft: tank.capacitance - member.capacitance };
-}
-
-interface NominalStart {
-  readonly oscillator: BuiltOscillator;
-  readonly started: Startup;
-}
-
-type WorstStart =
-  & Pick<
-    InductanceCheck,
-    "inductance" | "current" | "trimmed" | "worstLoopGain" | "worstCondition"
-  >
-  & { readonly nominal: NominalStart | undefined };
-
-/** The trimmed tank and the worst startup of one point. */
-function worstStart<Design>(
-  topology: Topology<Design>,
-  point: InductancePoint,
-  options: InductanceOptions<Design>,
-): WorstStart {
-  const { card, conditions, designWith } = options;
-  const trimmed = trimTank(topology, point, options);
-  const result = { ...point, trimmed, worstLoopGain: 0, worstCondition: conditions[0] };
-  if (!(trimmed.capacitanceLeft > 0)) return { ...result, nominal: undefined };
-  const design = topology.withCurrent(designWith(trimmed.tank), point.current);
-  let nominal: NominalStart | undefined;
-  let worstLoopGain = Infinity;
-  let worstCondition: Condition = conditions[0];
-  for (const condition of conditions) {
-    const oscillator = topology.build(design, { card, condition });
-    const started = startup(oscillator);
-    const gain = started.status === "found" ? started.loopGain : 0;
-    if (started.status === "found" && condition === conditions[0]) {
-      nominal = { oscillator, started };
-    }
-    if (gain < worstLoopGain) {
-      worstLoopGain = gain;
-      worstCondition = condition;
-    }
-  }
-  return { ...result, worstLoopGain, worstCondition, nominal };
-}
-
-/** Startup loop gain at the worst condition, the tank trimmed at that current [1]; 0 where nothing starts. */
-export function worstLoopGain<Design>(
-  topology: Topology<Design>,
-  point: InductancePoint,
-  options: InductanceOptions<Design>,
-): number {
-  return worstStart(topology, point, options).worstLoopGain;
-}
-
-/** Checks one inductance at one programmed current against every limit. */
-export function checkInductance<Design>(
-  topology: Topology<Design>,
-  point: InductancePoint,
-  options: InductanceOptions<Design>,
-): InductanceCheck {
-  const { nominal, ...start } = worstStart(topology, point, options);
-  const { frequency, leastCapacitance, resonanceRatio, mostPower, loopGain, family } = options;
-  const { member, capacitanceLeft } = start.trimmed;
-  const power = nominal && powerOf(nominal, options.conditions[0].supply);
-  const broken: BindingLimit[] = [];
-  if (!(start.worstLoopGain >= loopGain)) broken.push("startup");
-  if (!(capacitanceLeft > 0 && capacitanceLeft >= leastCapacitance)) {
-    broken.push("fixed capacitance");
-  }
-  if (!(member.selfResonance >= resonanceRatio * frequency)) broken.push("self-resonance");
-  if (power !== undefined && !(power <= mostPower)) broken.push("power");
-  if (point.inductance < family.smallest) broken.push("smallest of the family");
-  if (point.inductance > family.largest) broken.push("largest of the family");
-  return { ...start, power, broken };
-}
-
-function powerOf({ oscillator, started }: NominalStart, supply: number): number {
-  const orbit = oscillation(oscillator, { started });
-  const current = (x: Float64Array) => oscillator.supplyCurrent(x);
-  return supply *
-    (orbit instanceof Orbit ? orbit.mean(current) : current(started.equilibrium.state));
-}
 
 /** The smallest inductance and what it rests on. */
 export interface InductanceAnswer {
@@ -366,7 +177,8 @@ function smallestStarting<Design>(
 function scanned({ smallest, largest, inductances }: InductorFamily): readonly number[] {
   return inductances ?? Array.from(
     { length: SCAN_POINTS },
-    (_, k) => k === SCAN_POINTS - 1 ? largest : smallest * (largest / smallest) ** (k / 12),
+    (_, k) =>
+      k === SCAN_POINTS - 1 ? largest : smallest * (largest / smallest) ** (k / (SCAN_POINTS - 1)),
   );
 }
 
@@ -382,32 +194,4 @@ export function closeIn(
     else low = middle;
   }
   return { low, high };
-}
-
-/** The limits that a check breaks, with their figures, in words. */
-export function brokenText<Design>(
-  { broken, worstLoopGain: gain, power = NaN, trimmed, inductance, current }: InductanceCheck,
-  options: InductanceOptions<Design>,
-): string {
-  const { loopGain, mostPower, leastCapacitance, resonanceRatio, frequency } = options;
-  const short = (value: number) => String(Number(value.toPrecision(3)));
-  const parts = broken.map((limit) => {
-    switch (limit) {
-      case "startup":
-        return `the loop gain is ${short(gain)}, ${loopGain} is asked for`;
-      case "power":
-        return `the power is ${short(power * 1e3)} mW, at most ${short(mostPower * 1e3)} mW`;
-      case "fixed capacitance":
-        return `${short(trimmed.capacitanceLeft * 1e15)} fF is left for the capacitor, ${
-          short(leastCapacitance * 1e15)
-        } fF is needed`;
-      case "self-resonance":
-        return `the coil resonates at ${short(trimmed.member.selfResonance / 1e9)} GHz, ${
-          short(resonanceRatio * frequency / 1e9)
-        } GHz is needed`;
-      default:
-        return "the family has no such coil";
-    }
-  });
-  return `at ${short(inductance * 1e9)} nH and ${short(current * 1e3)} mA ${parts.join("; ")}`;
 }

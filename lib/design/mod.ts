@@ -25,20 +25,47 @@ export {
 export { oscillation, type OscillationOptions } from "./oscillation.ts";
 export { type HandComparison, handComparisons, transistorAt } from "./hand_values.ts";
 export {
-  type BindingLimit,
-  checkInductance,
-  type FamilyMember,
+  closeIn,
   type InductanceAnswer,
-  type InductanceCheck,
-  type InductanceColumn,
-  inductanceColumn,
-  type InductanceOptions,
-  type InductorFamily,
   type NoInductance,
+  smallestByTrial,
   smallestInductance,
+} from "./inductance.ts";
+export {
+  type BindingLimit,
+  brokenText,
+  checkInductance,
+  type InductanceCheck,
+  type InductanceOptions,
+  type InductancePoint,
+  type NominalStart,
   type TrimmedTank,
   trimTank,
-} from "./inductance.ts";
+  type WorstStart,
+  worstStart,
+} from "./inductance_check.ts";
+export {
+  type FamilyLimit,
+  familyLimits,
+  type InductanceColumn,
+  inductanceColumn,
+  type InductanceColumnOptions,
+  inductanceTrend,
+  type InductanceTrendOptions,
+  type InductanceTrendPoint,
+  smallestOnKneeLine,
+} from "./inductance_map.ts";
+export {
+  type FamilyMember,
+  geometryFamily,
+  type GeometryFamilyOptions,
+  type InductorFamily,
+  type MeasuredCoil,
+  measuredFamily,
+  type MeasuredFamilyOptions,
+  ruleFamily,
+  type RuleFamilyOptions,
+} from "./inductor_family.ts";
 export {
   type DesignParameter,
   type NoiseDerivative,

@@ -56,7 +56,7 @@ export interface CoilFit {
 
 /** Why no network was found. */
 export interface NoCoilFit {
-  readonly status: "not_found";
+  readonly status: "no fit";
   readonly reason: string;
   readonly evaluations: number;
 }
@@ -125,7 +125,7 @@ export function fitCoil(curves: CoilCurves, options: FitCoilOptions = {}): CoilF
   const observations = observe(curves, options);
   const elements = observations.shunt ? TWO_CURVES : ONE_CURVE;
   const first = firstGuess(observations);
-  if (typeof first === "string") return { status: "not_found", reason: first, evaluations: 0 };
+  if (typeof first === "string") return { status: "no fit", reason: first, evaluations: 0 };
   let evaluations = 0;
   const search = (names: readonly CoilFitElement[], starts: readonly number[][]) => {
     const attempts = starts.map((start) => attempt(observations, names, start));
@@ -142,9 +142,9 @@ export function fitCoil(curves: CoilCurves, options: FitCoilOptions = {}): CoilF
     : search(elements, substrateStarts(first, curves, elements.length));
   const worthIt = full && (!plain || full.rms < WORTH_A_SUBSTRATE * plain.rms);
   const best = worthIt ? full : plain!;
-  if (best.status === "not_found") {
+  if (best.status === "not settled") {
     return {
-      status: "not_found",
+      status: "no fit",
       reason: `the search did not settle; relative residual ${best.rms.toPrecision(3)}`,
       evaluations,
     };
@@ -153,15 +153,15 @@ export function fitCoil(curves: CoilCurves, options: FitCoilOptions = {}): CoilF
 }
 
 function observe(curves: CoilCurves, options: FitCoilOptions): Observations {
-  const from = options.from ?? 0;
-  const to = options.to ?? curves.selfResonance ?? Infinity;
+  const { from = curves.frequencies[0]!, to = curves.selfResonance ?? Infinity } = options;
+  const highest = Math.min(to, curves.frequencies.at(-1)!);
   const indices = Array.from(curves.frequencies.keys()).filter((k) =>
-    curves.frequencies[k]! >= from && curves.frequencies[k]! <= to
+    curves.frequencies[k]! >= from && curves.frequencies[k]! <= highest
   );
   if (!(indices.length >= TWO_CURVES.length)) {
     throw new RangeError(
-      `Cannot fit the coil: frequencies from ${from} Hz to ${to} Hz must be at least ` +
-        `${TWO_CURVES.length}, got ${indices.length}`,
+      `Cannot fit the coil: the file must have at least ${TWO_CURVES.length} frequencies from ${from} Hz ` +
+        `to ${highest} Hz, got ${indices.length}`,
     );
   }
   const { toGround, tapGrounded } = curves;
@@ -219,7 +219,7 @@ function substrateStarts(
 
 interface Attempt {
   readonly elements: readonly CoilFitElement[];
-  readonly status: "found" | "not_found";
+  readonly status: "found" | "not settled";
   readonly logarithms: Float64Array;
   readonly sumOfSquares: number;
   readonly rms: number;

@@ -26,7 +26,9 @@ export interface CoilFromGeometryOptions {
  * The inductance is the closed form's; the rest is the pi network of {@linkcode tracePi}, with a crossing
  * per turn for a spiral and one less for a symmetric coil. The pi network puts half the substrate under
  * each end: driven differentially the voltage falls along the trace, and the true weight of the oxide is
- * nearer a third of that (linear voltage), so the self-resonance comes out low.
+ * nearer a third of that (linear voltage), so the self-resonance comes out low. Crowding of the current by
+ * neighbouring turns is left out, so the quality factor comes out high where the trace is several skin
+ * depths wide. Both are for a first choice; a drawn coil is read from a file.
  *
  * @throws {RangeError} when a figure is out of range
  * @throws {TypeError} when shape and formula do not go together

@@ -26,7 +26,7 @@ export type CoilFromNetwork =
     readonly curves: CoilCurves;
     readonly fit: CoilFit;
   }
-  | { readonly status: "not_found"; readonly reason: string; readonly curves: CoilCurves };
+  | { readonly status: "no fit"; readonly reason: string; readonly curves: CoilCurves };
 
 /** Residual of a fit above which a reader is warned [1]. */
 const FAIR_RESIDUAL = 0.05;
@@ -44,7 +44,7 @@ export function coilFromNetwork(
   const { excitation } = options;
   const curves = coilCurves(network, { excitation });
   const fit = fitCoil(curves, options);
-  if (fit.status === "not_found") return { status: "not_found", reason: fit.reason, curves };
+  if (fit.status === "no fit") return { status: "no fit", reason: fit.reason, curves };
   const coupling = options.coupling ?? couplingOf(curves, fit);
   const parameters = coupling === undefined ? fit.parameters : { ...fit.parameters, coupling };
   const coil = coilModel(parameters, {

@@ -17,7 +17,7 @@ export const NETWORK_PARAMETERS = ["S", "Y", "Z", "H", "G"] as const;
 /** Network parameters a Touchstone file may hold. */
 export type NetworkParameter = (typeof NETWORK_PARAMETERS)[number];
 
-/** How a Touchstone file writes complex numbers: magnitude, decibels, each with degrees, or real and imaginary. */
+/** How a Touchstone file writes complex numbers: magnitude or decibels with degrees, or both parts. */
 export const NETWORK_FORMATS = ["MA", "DB", "RI"] as const;
 
 /** How a Touchstone file writes complex numbers. */

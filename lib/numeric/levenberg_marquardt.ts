@@ -12,8 +12,8 @@ export interface LevenbergMarquardtOptions {
 
 /** Where a least-squares search ended. */
 export interface LeastSquares {
-  /** `found` when no step lowers the sum any more; `not_found` when the iterations ran out. */
-  readonly status: "found" | "not_found";
+  /** `found` when no step lowers the sum any more; `not settled` when the iterations ran out. */
+  readonly status: "found" | "not settled";
   /** Shape (n,). */
   readonly parameters: Float64Array;
   /** Shape (m,). */
@@ -116,7 +116,7 @@ export function levenbergMarquardt(
     }
   };
   differentiate();
-  let status: LeastSquares["status"] = "not_found";
+  let status: LeastSquares["status"] = "not settled";
   while (accepted < limit) {
     if (!(sum > 0) || damping > GREATEST_DAMPING) {
       status = "found";

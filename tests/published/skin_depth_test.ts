@@ -21,7 +21,8 @@ Deno.test("skinDepth gives the textbook depths of four metals at 10 GHz", () => 
 Deno.test("skinDepth and effectiveThickness give copper and aluminium films of 2 um", () => {
   // Resistivities at 20 C: CRC Handbook. Effective thickness: C. P. Yue, S. S. Wong, IEEE Trans. Electron
   // Devices 47 (2000) 560. Columns: frequency in GHz, depth and effective thickness in um, surface
-  // resistance rho/delta in milliohm; evaluated by an independent program, printed digits (from memory but for copper at 1 GHz).
+  // resistance rho/delta in milliohm; evaluated by an independent program, printed digits (from memory but
+  // for copper at 1 GHz).
   const table = {
     copper: [
       [1, 2.06288, 1.2805, 8.1439],
