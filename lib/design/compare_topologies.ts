@@ -1,9 +1,10 @@
 /**
- * Topologies on equal terms: the same tank, supply and power.
+ * Topologies on equal terms: the same coil, frequency, supply and power.
  *
  * @module
  */
-import type { Condition, Topology } from "../circuit/topology.ts";
+import type { Schematic } from "../circuit/schematic.ts";
+import type { BuiltOscillator, Condition, Topology } from "../circuit/topology.ts";
 import type { TechnologyCard } from "../device/technology_card.ts";
 import { Orbit } from "../orbit/orbit.ts";
 import {
@@ -13,32 +14,38 @@ import {
   operatingFigures,
 } from "./operating_figures.ts";
 import { oscillation } from "./oscillation.ts";
-import { startup } from "./startup.ts";
+import { type Startup, startup } from "./startup.ts";
 
-const CURRENT_ITERATIONS = 12;
-/** Relative accuracy to which the power is met. */
+const ITERATIONS = 24;
+/** Relative accuracy to which power and frequency are met. */
 const POWER_TOLERANCE = 1e-3;
+const FREQUENCY_TOLERANCE = 1e-4;
 /** Largest change of the current in one iteration, as a factor. */
 const LARGEST_CHANGE = 2;
 
-/** One topology with its design on the common tank; the current is found. */
-export interface Candidate<Design> {
-  readonly topology: Topology<Design>;
-  readonly design: Design;
+/** What is found for a candidate: its programmed current and the capacitance across its coil. */
+export interface CandidatePoint {
+  /** [A] */
+  readonly current: number;
+  /** All capacitance of the design across the coil, a divider's in series, devices not counted [F]. */
+  readonly capacitance: number;
 }
 
-/** A candidate with its design hidden, so that different topologies stand in one list. */
-export interface Contender {
-  readonly name: string;
-  readonly title: string;
-  /** Solves the candidate at a power [W] in a condition. */
-  solve(options: ContenderOptions): TopologyResult;
+/** One topology with its designs on the common tank. */
+export interface Candidate<Design> {
+  readonly topology: Topology<Design>;
+  /** Inductance of its coil [H]. */
+  readonly inductance: number;
+  /** The design at a current and a capacitance; throws a RangeError where there is none. */
+  readonly designAt: (point: CandidatePoint) => Design;
 }
 
 /** At what the candidates are compared. */
 export interface ContenderOptions {
   readonly card: TechnologyCard;
   readonly condition: Condition;
+  /** Of the oscillation: every candidate is trimmed to it [Hz]. */
+  readonly frequency: number;
   /** Offset of the phase noise [Hz]. */
   readonly offset: number;
   /** Supply power every candidate gets [W]. */
@@ -47,79 +54,201 @@ export interface ContenderOptions {
   readonly current: number;
 }
 
-/** How one topology does. */
-export interface TopologyResult {
+/** A candidate with its design hidden, so that different topologies stand in one list. */
+export interface Contender {
   readonly name: string;
   readonly title: string;
-  /** Programmed current that draws the power [A]. */
-  readonly current: number;
-  /** Startup loop gain there [1]; undefined without an equilibrium. */
+  /**
+   * Finds the current and the capacitance at which the candidate draws the power at the frequency.
+   *
+   * @throws {RangeError} when the power or the frequency is not positive
+   */
+  solve(options: ContenderOptions): TopologyResult;
+}
+
+/** How a fixed design does in one condition. */
+export interface ContenderAt {
+  readonly condition: Condition;
+  /** Startup loop gain [1]; undefined without an equilibrium. */
   readonly loopGain: number | undefined;
   /** Whether it starts by itself. */
   readonly starts: boolean;
+  /** Undefined where there is no orbit. */
   readonly figures: OperatingFigures | undefined;
-  /** Peak voltages against the card's limits, the nearest first. */
+  /** Peak voltages against the card's limits, the nearest first; empty where there is no orbit. */
   readonly stresses: readonly DeviceStress[];
   /** Why there are no figures. */
   readonly reason?: string;
 }
 
-/** Wraps a topology and its design for a comparison. */
-export function contender<Design>({ topology, design }: Candidate<Design>): Contender {
-  return {
-    name: topology.name,
-    title: topology.title,
-    solve: (options) => atPower(topology, design, options),
-  };
+/** How one topology does at the power. */
+export interface TopologyResult extends ContenderAt, CandidatePoint {
+  readonly name: string;
+  readonly title: string;
+  /** Schematic with the values found; undefined where no design could be made. */
+  readonly schematic: Schematic | undefined;
+  /** The same design in another condition. */
+  readonly in: (condition: Condition) => ContenderAt;
+  /** Its startup loop gain alone in another condition [1]; undefined without an equilibrium. */
+  readonly loopGainIn: (condition: Condition) => number | undefined;
 }
 
-/**
- * The candidate at the programmed current that draws the asked power: iteration on the current with
- * the orbit's mean supply current.
- */
-function atPower<Design>(
-  topology: Topology<Design>,
-  design: Design,
-  { card, condition, offset, power, current: first }: ContenderOptions,
-): TopologyResult {
-  if (!(power > 0)) {
-    throw new RangeError(`Cannot compare topologies: power must be > 0 W, got ${power} W`);
+/** Wraps a topology and its designs for a comparison. */
+export function contender<Design>(candidate: Candidate<Design>): Contender {
+  const { name, title } = candidate.topology;
+  return { name, title, solve: (options) => new Comparison(candidate, options).solve() };
+}
+
+interface Solved {
+  readonly oscillator: BuiltOscillator;
+  readonly started: Startup;
+}
+
+/** One candidate being brought to the power and the frequency. */
+class Comparison<Design> {
+  constructor(
+    readonly candidate: Candidate<Design>,
+    readonly options: ContenderOptions,
+  ) {
+    const { power, frequency } = options;
+    if (!(power > 0 && frequency > 0)) {
+      throw new RangeError(
+        `Cannot compare topologies: power and frequency must be > 0, got ${power} W and ${frequency} Hz`,
+      );
+    }
   }
-  const { name, title } = topology;
-  let current = first;
-  let result: TopologyResult = {
-    name,
-    title,
-    current,
-    loopGain: undefined,
-    starts: false,
-    figures: undefined,
-    stresses: [],
-    reason: "no operating point was found",
-  };
-  for (let iteration = 0; iteration < CURRENT_ITERATIONS; iteration++) {
-    const oscillator = topology.build(topology.withCurrent(design, current), { card, condition });
+
+  /** First with the circuit at rest, which is cheap, then over the orbit. */
+  solve(): TopologyResult {
+    const { current, condition } = this.options;
+    let point: CandidatePoint = { current, capacitance: this.#whole };
+    try {
+      for (const over of ["rest", "orbit"] as const) {
+        for (let iteration = 0;; iteration++) {
+          const solved = this.#start(point, condition);
+          if (typeof solved === "string") return this.#lost(point, solved);
+          const seen = this.#seen(solved, over);
+          if (typeof seen === "string") return this.#result(point);
+          const next = this.#next(point, seen);
+          if (next === undefined) break;
+          if (iteration === ITERATIONS) {
+            return this.#lost(point, "power and frequency were not reached together");
+          }
+          if (!(next.capacitance > 0)) {
+            return this.#lost(point, "its devices' own capacitance is too much at the frequency");
+          }
+          point = next;
+        }
+      }
+      return this.#result(point);
+    } catch (error) {
+      if (error instanceof RangeError) return this.#lost(point, error.message);
+      throw error;
+    }
+  }
+
+  get #whole(): number {
+    return 1 / ((2 * Math.PI * this.options.frequency) ** 2 * this.candidate.inductance);
+  }
+
+  #design(point: CandidatePoint): Design {
+    return this.candidate.designAt(point);
+  }
+
+  #start(point: CandidatePoint, condition: Condition): Solved | string {
+    const { topology } = this.candidate;
+    const { card } = this.options;
+    const oscillator = topology.build(this.#design(point), { card, condition });
     const started = startup(oscillator);
-    if (started.status !== "found") return { ...result, current, reason: started.reason };
-    const base = {
+    return started.status === "found" ? { oscillator, started } : started.reason;
+  }
+
+  /** Power and frequency at rest, the latter from the startup, or over the orbit. */
+  #seen(
+    { oscillator, started }: Solved,
+    over: "rest" | "orbit",
+  ): { power: number; frequency: number } | string {
+    const { supply } = this.options.condition;
+    const current = (x: Float64Array) => oscillator.supplyCurrent(x);
+    if (over === "rest") {
+      const { equilibrium: { state }, frequency } = started;
+      return { power: supply * current(state), frequency };
+    }
+    const orbit = oscillation(oscillator, { started });
+    return orbit instanceof Orbit
+      ? { power: supply * orbit.mean(current), frequency: orbit.frequency }
+      : orbit.reason;
+  }
+
+  /** A better point; undefined where this one is good enough. */
+  #next(
+    { current, capacitance }: CandidatePoint,
+    seen: { power: number; frequency: number },
+  ): CandidatePoint | undefined {
+    const ratio = this.options.power / seen.power;
+    const pitch = seen.frequency / this.options.frequency;
+    if (
+      Math.abs(ratio - 1) < POWER_TOLERANCE && Math.abs(pitch - 1) < FREQUENCY_TOLERANCE
+    ) return undefined;
+    const factor = Math.min(LARGEST_CHANGE, Math.max(1 / LARGEST_CHANGE, ratio));
+    // f^2 ~ 1/(C + own): the devices' own stays, so C moves by the whole's lack.
+    return {
+      current: current * factor,
+      capacitance: capacitance + this.#whole * (1 - pitch ** -2),
+    };
+  }
+
+  #result(point: CandidatePoint): TopologyResult {
+    const { topology } = this.candidate;
+    return {
+      ...point,
+      name: topology.name,
+      title: topology.title,
+      schematic: topology.schematic(this.#design(point)),
+      ...this.#at(point, this.options.condition),
+      in: (condition) => this.#at(point, condition),
+      loopGainIn: (condition) => {
+        const solved = this.#start(point, condition);
+        return typeof solved === "string" ? undefined : solved.started.loopGain;
+      },
+    };
+  }
+
+  #at(point: CandidatePoint, condition: Condition): ContenderAt {
+    const { card, offset } = this.options;
+    const solved = this.#start(point, condition);
+    const none = { condition, figures: undefined, stresses: [] };
+    if (typeof solved === "string") {
+      return { ...none, loopGain: undefined, starts: false, reason: solved };
+    }
+    const { oscillator, started } = solved;
+    const { loopGain, starts } = started;
+    const orbit = oscillation(oscillator, { started });
+    if (!(orbit instanceof Orbit)) return { ...none, loopGain, starts, reason: orbit.reason };
+    const stresses = deviceStresses(oscillator, orbit, card);
+    stresses.sort((a, b) => b.peak / b.limit - a.peak / a.limit);
+    const figures = operatingFigures(oscillator, orbit, { supply: condition.supply, offset });
+    return { condition, loopGain, starts, figures, stresses };
+  }
+
+  #lost(point: CandidatePoint, reason: string): TopologyResult {
+    const { name, title } = this.candidate.topology;
+    const nothing = (condition: Condition): ContenderAt => ({
+      condition,
+      loopGain: undefined,
+      starts: false,
+      figures: undefined,
+      stresses: [],
+      reason,
+    });
+    return {
+      ...point,
       name,
       title,
-      current,
-      loopGain: started.loopGain,
-      starts: started.starts,
-      stresses: [],
+      schematic: undefined,
+      ...nothing(this.options.condition),
+      in: nothing,
+      loopGainIn: () => undefined,
     };
-    const orbit = oscillation(oscillator, { started });
-    if (!(orbit instanceof Orbit)) return { ...base, figures: undefined, reason: orbit.reason };
-    const figures = operatingFigures(oscillator, orbit, { supply: condition.supply, offset });
-    const ratio = power / figures.power;
-    if (Math.abs(ratio - 1) < POWER_TOLERANCE) {
-      const stresses = deviceStresses(oscillator, orbit, card);
-      stresses.sort((a, b) => b.peak / b.limit - a.peak / a.limit);
-      return { ...base, figures, stresses };
-    }
-    result = { ...base, figures: undefined, reason: `the power ${power} W was not reached` };
-    current *= Math.min(LARGEST_CHANGE, Math.max(1 / LARGEST_CHANGE, ratio));
   }
-  return result;
 }

@@ -13,13 +13,11 @@ import {
   type InductanceOptions,
   worstStart,
 } from "./inductance_check.ts";
+import { closeIn } from "./_close_in.ts";
 import type { InductorFamily } from "./inductor_family.ts";
 
 /** Inductances at which a family without gaps is looked at before a boundary is closed in on. */
 const SCAN_POINTS = 13;
-const ROOT_ITERATIONS = 40;
-/** Relative accuracy of the smallest inductance and of the boundaries. */
-const ROOT_TOLERANCE = 1e-4;
 /** Relative step of the quality factor for the sensitivity of the answer. */
 const QUALITY_STEP = 0.02;
 
@@ -180,18 +178,4 @@ function scanned({ smallest, largest, inductances }: InductorFamily): readonly n
     (_, k) =>
       k === SCAN_POINTS - 1 ? largest : smallest * (largest / smallest) ** (k / (SCAN_POINTS - 1)),
   );
-}
-
-/** Closes in on where `holds` turns true between a low end where it does not and a high end where it does. */
-export function closeIn(
-  ends: { readonly low: number; readonly high: number },
-  holds: (value: number) => boolean,
-): { low: number; high: number } {
-  let { low, high } = ends;
-  for (let k = 0; k < ROOT_ITERATIONS && high / low > 1 + ROOT_TOLERANCE; k++) {
-    const middle = Math.sqrt(low * high);
-    if (holds(middle)) high = middle;
-    else low = middle;
-  }
-  return { low, high };
 }

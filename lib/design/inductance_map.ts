@@ -5,9 +5,10 @@
  * @module
  */
 import type { Topology } from "../circuit/topology.ts";
+import { closeIn } from "./_close_in.ts";
 import { type BiasPoint, type BiasSweep, biasSweep } from "./bias.ts";
 import { handComparisons } from "./hand_values.ts";
-import { closeIn, type InductanceAnswer, type NoInductance } from "./inductance.ts";
+import type { InductanceAnswer, NoInductance } from "./inductance.ts";
 import {
   type BindingLimit,
   brokenText,

@@ -25,7 +25,6 @@ export {
 export { oscillation, type OscillationOptions } from "./oscillation.ts";
 export { type HandComparison, handComparisons, transistorAt } from "./hand_values.ts";
 export {
-  closeIn,
   type InductanceAnswer,
   type NoInductance,
   smallestByTrial,
@@ -75,10 +74,19 @@ export {
   type WhatIfOptions,
   type WhatIfPoint,
 } from "./what_if.ts";
+export { type CommonTank, onCommonTank } from "./common_tank.ts";
 export {
   type Candidate,
+  type CandidatePoint,
   type Contender,
   contender,
+  type ContenderAt,
   type ContenderOptions,
   type TopologyResult,
 } from "./compare_topologies.ts";
+export {
+  ceilingValues,
+  type NoisePoint,
+  noisePoint,
+  type NoisePointOptions,
+} from "./noise_point.ts";

@@ -7,13 +7,14 @@ import type { Startup } from "./startup.ts";
 
 /** Most time steps spent on a kick: a motion that dies out shows it within a few hundred cycles. */
 const KICK_STEPS = 20_000;
-
 /** Most times a closed motion is suspected to run through its orbit. */
 const MOST_ROUNDS = 8;
-/** Where on the orbit a single round is looked for. */
-const PLACES = [0, 0.21, 0.37, 0.58, 0.83];
 /** Two states closer than this part of the motion are the same. */
 const SAME = 1e-4;
+/** Where on the orbit a single round is looked for. */
+const PLACES = [0, 0.21, 0.37, 0.58, 0.83];
+/** Fundamental of the tank voltage over half an output's swing, below which the motion is in another mode. */
+const IN_TANK = 0.1;
 
 /** Options of {@linkcode oscillation}. */
 export interface OscillationOptions extends Pick<FindOrbitOptions, "tolerance" | "transientSteps"> {
@@ -23,31 +24,76 @@ export interface OscillationOptions extends Pick<FindOrbitOptions, "tolerance" |
 
 /**
  * The orbit in the tank's own mode: grown from the equilibrium where the tank's poles are unstable, even
- * if other poles grow faster; else from the topology's kick, where it has one.
+ * if other poles grow faster; else, or where that ends in another mode, from the topology's kick.
  *
  * @returns the orbit or a failure with its reason
  */
 export function oscillation(
-  { circuit, kick }: BuiltOscillator,
+  oscillator: BuiltOscillator,
   { started, tolerance, transientSteps }: OscillationOptions,
 ): OrbitResult {
-  const settings = {
+  const { circuit: { system }, kick } = oscillator;
+  const settings: Settings = {
     ...(tolerance === undefined ? {} : { tolerance }),
     ...(transientSteps === undefined ? {} : { transientSteps }),
   };
-  const soft = started.starts || !kick;
-  const found = findOrbit(
-    circuit.system,
-    soft
-      ? { start: tankFirst(started), ...settings }
-      : { start: kick.state, period: kick.period, transientSteps: KICK_STEPS, ...settings },
+  if (started.starts || !kick) {
+    const grown = singleRound(
+      findOrbit(system, { start: tankFirst(started), ...settings }),
+      settings,
+    );
+    const elsewhere = (grown instanceof Orbit ? grown : grown.orbit) ?? undefined;
+    if (!elsewhere || inTank(oscillator, elsewhere)) {
+      if (grown instanceof Orbit || !kick || !started.otherUnstable.length) return grown;
+    } else if (!kick) {
+      return otherMode(elsewhere);
+    }
+  }
+  const { state: start, period } = kick;
+  const kicked = singleRound(
+    findOrbit(system, { start, period, transientSteps: KICK_STEPS, ...settings }),
+    settings,
   );
+  const orbit = kicked instanceof Orbit ? kicked : kicked.orbit;
+  return orbit && !inTank(oscillator, orbit) ? otherMode(orbit) : kicked;
+}
+
+type Settings = Pick<FindOrbitOptions, "tolerance" | "transientSteps">;
+
+/** Whether an orbit moves the tank voltage at its own frequency. */
+function inTank({ circuit, tank }: BuiltOscillator, orbit: Orbit): boolean {
+  const { plus, minus } = tank;
+  const { re, im } = orbit.phasor((x) => circuit.voltage(plus, minus, x));
+  const { states } = orbit.samples;
+  const n = orbit.system.dimension;
+  let [low, high] = [Infinity, -Infinity];
+  for (let at = 0; at < states.length; at += n) {
+    const value = circuit.potential(plus, states.subarray(at, at + n));
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  return Math.hypot(re, im) > IN_TANK * (high - low) / 2;
+}
+
+function otherMode(orbit: Orbit): OrbitResult {
+  return orbitFailure(
+    "no convergence",
+    `the motion ends in another mode than the tank's: an orbit at ${
+      orbit.frequency.toPrecision(4)
+    } Hz without tank voltage`,
+    { work: orbit.work },
+  );
+}
+
+/**
+ * One round of an orbit that was found as several: two or more rounds close as well as one, and a first
+ * return may be overlooked where the motion jumps within a time step.
+ */
+function singleRound(found: OrbitResult, settings: Settings): OrbitResult {
   const rounds = found instanceof Orbit ? roundsOf(found) : 1;
   if (!(found instanceof Orbit) || rounds === 1) return found;
-  // Two or more rounds close as well as one: the first return of a state on the orbit is one round, where
-  // the motion is slow enough to be seen returning.
   for (const place of PLACES) {
-    const single = findOrbit(circuit.system, {
+    const single = findOrbit(found.system, {
       start: found.at(place * found.period / rounds),
       period: found.period / rounds,
       ...settings,
@@ -65,17 +111,17 @@ export function oscillation(
 function roundsOf(orbit: Orbit): number {
   const { times, states } = orbit.samples;
   const n = orbit.system.dimension;
-  const range = Array.from({ length: n }, (_, j) => {
+  const scale = orbit.system.scale ?? new Float64Array(n).fill(1);
+  let largest = 0;
+  for (let j = 0; j < n; j++) {
     let [low, high] = [Infinity, -Infinity];
     for (let k = 0; k < times.length; k++) {
       const value = states[k * n + j] ?? NaN;
       low = Math.min(low, value);
       high = Math.max(high, value);
     }
-    return high - low;
-  });
-  const scale = orbit.system.scale ?? new Float64Array(n).fill(1);
-  const largest = Math.max(...range.map((value, j) => value / (scale[j] ?? 1)));
+    largest = Math.max(largest, (high - low) / (scale[j] ?? 1));
+  }
   const first = orbit.at(0);
   for (let rounds = MOST_ROUNDS; rounds > 1; rounds--) {
     const later = orbit.at(orbit.period / rounds);

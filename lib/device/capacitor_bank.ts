@@ -70,8 +70,8 @@ export interface MonotonyFault {
  * A switched capacitor bank, all values differential.
  *
  * A cell of weight w is C in series with its own loss and with the switch: R_on beside C_off when closed,
- * C_off beside twice the bias resistance when open. So a closed cell has Q = 1/(w R_on C) to the order of
- * (w R_on C_off)^2 and below, and the capacitance falls by 1 + C/C_off on opening, whatever the weight when
+ * C_off beside twice the bias resistance when open. So a closed cell has Q = (1 + a^2)/(w R_on C) + a with
+ * a = w R_on C_off, far below 1, and the capacitance falls by 1 + C/C_off on opening, whatever the weight when
  * the switch grows with the capacitance. Plates' capacitance to the substrate is there at any code.
  */
 export class CapacitorBank {

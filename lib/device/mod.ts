@@ -1,8 +1,25 @@
 /**
- * Devices: transistor, junction, coil, technology card; Touchstone files.
+ * Devices: transistor from model or table, junction, varactors, capacitor bank, coil, technology card;
+ * Touchstone files.
  *
  * @module
  */
+export {
+  type BankBranch,
+  type BankProcess,
+  type BankState,
+  CapacitorBank,
+  type CapacitorBankDesign,
+  type MonotonyFault,
+} from "./capacitor_bank.ts";
+export {
+  type ClosedCell,
+  frequencyStep,
+  type SteppedTank,
+  switchedQuality,
+  switchOnResistance,
+} from "./capacitor_bank_sizing.ts";
+export { type CapacitorLoss, capacitorLoss, type LossyCapacitor } from "./capacitor_loss.ts";
 export { type Corner, CORNERS } from "./corner.ts";
 export type { Admittance } from "./inductor_admittance.ts";
 export { commonModeInductance, couplingFromModes } from "./inductor_common_mode.ts";
@@ -62,13 +79,32 @@ export { inversionCharge, inversionSlope } from "./inversion.ts";
 export { Junction, type JunctionParameters } from "./junction.ts";
 export { deviatedTransistor, mismatchDeviation, type TransistorDeviation } from "./mismatch.ts";
 export {
+  resolveBankProcess,
+  type ResolveBankProcessOptions,
+  type ResolvedBankProcess,
+} from "./resolve_bank_process.ts";
+export {
   type PassiveFactors,
   resolvePassives,
   type ResolvePassivesOptions,
 } from "./resolve_passives.ts";
 export { resolveTransistor, type ResolveTransistorOptions } from "./resolve_transistor.ts";
+export {
+  resolveAccumulationVaractor,
+  type ResolveAccumulationVaractorOptions,
+  resolveJunctionVaractor,
+  type ResolveJunctionVaractorOptions,
+} from "./resolve_varactor.ts";
 export { effectiveThickness, skinDepth } from "./skin_depth.ts";
 export { BULK_METALS, type ConductorMetal, resistivityAt } from "./skin_metal.ts";
+export {
+  type ChargeWaveform,
+  type SinusoidalSwing,
+  type SwingCapacitance,
+  swingCapacitance,
+  type WaveformCapacitance,
+  waveformCapacitance,
+} from "./swing_capacitance.ts";
 export {
   type CardLimit,
   type CardTransistor,
@@ -92,9 +128,29 @@ export {
 export { readTouchstone, type ReadTouchstoneOptions } from "./touchstone_read.ts";
 export { writeTouchstone, type WriteTouchstoneOptions } from "./touchstone_write.ts";
 export { Transistor, TRANSISTOR_VALUES } from "./transistor.ts";
+export { type TransistorModel } from "./transistor_model.ts";
 export { inversionName, type TransistorOperatingPoint } from "./transistor_operating_point.ts";
 export {
   type TransistorJunctions,
   type TransistorParameters,
   type TransistorSize,
 } from "./transistor_parameters.ts";
+export {
+  type TableExcursion,
+  TransistorTable,
+  type TransistorTableOptions,
+} from "./transistor_table.ts";
+export { parseTransistorTable, TransistorTableError } from "./transistor_table_csv.ts";
+export { type TransistorTableCharges, type TransistorTableData } from "./transistor_table_data.ts";
+export {
+  type Varactor,
+  type VaractorFigures,
+  varactorFigures,
+  type VaractorNoise,
+} from "./varactor.ts";
+export {
+  AccumulationVaractor,
+  type AccumulationVaractorParameters,
+} from "./varactor_accumulation.ts";
+export { InversionVaractor, type InversionVaractorOptions } from "./varactor_inversion.ts";
+export { JunctionVaractor, type JunctionVaractorParameters } from "./varactor_junction.ts";

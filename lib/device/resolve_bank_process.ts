@@ -34,7 +34,7 @@ export function resolveBankProcess(
   const bank = card.capacitorBank;
   if (bank === undefined) {
     throw new RangeError(
-      `Cannot resolve the capacitor bank: card "${card.name}" must have a capacitor bank, got none`,
+      `Cannot resolve the capacitor bank: card "${card.name}" has no bank`,
     );
   }
   demandTemperature(card, temperature, { action: "resolve the capacitor bank" });

@@ -98,7 +98,7 @@ function capacitanceFactor(
 
 function missing(card: TechnologyCard, what: string): RangeError {
   return new RangeError(
-    `Cannot resolve the varactor: card "${card.name}" must have a ${what}, got none`,
+    `Cannot resolve the varactor: card "${card.name}" has no ${what}`,
   );
 }
 

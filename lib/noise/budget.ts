@@ -15,8 +15,13 @@ import type { PowerLaw } from "./power_law.ts";
 
 /** Noise that enters through an input of the circuit: a supply, a control voltage, a current. */
 export interface InputNoise {
-  /** Name of the input, as `inputSensitivity` gives it. */
+  /** Name of the input, as `inputSensitivity` gives it; with `gain` any name. */
   readonly input: string;
+  /**
+   * Frequency per unit of it, for what the circuit does not hold, such as a varactor's control line [Hz/unit].
+   * @default the derivative of the orbit's frequency by the circuit's input of that name
+   */
+  readonly gain?: number;
   /** What the noise is called in the budget: "regulator". */
   readonly label: string;
   /** One-sided density of the input at an offset [unit/sqrt(Hz)]. */
@@ -109,7 +114,7 @@ export function noiseBudget(
     phase: Float64Array.from(columns, (column) => column[k]!.phase),
     amplitude: Float64Array.from(columns, (column) => column[k]!.amplitude),
   }));
-  const gains = inputs.length > 0 ? inputSensitivity(orbit) : [];
+  const gains = inputs.some(({ gain }) => gain === undefined) ? inputSensitivity(orbit) : [];
   const nothing = new Float64Array(offsets.length);
   for (const noise of inputs) {
     const phase = inputPhase(noise, { gains, offsets });
@@ -161,28 +166,35 @@ export function noiseBudget(
 
 /** Phase noise of an input's noise at each offset [1/Hz]. */
 function inputPhase(
-  { input, label, density }: InputNoise,
+  { input, label, density, gain: given }: InputNoise,
   { gains, offsets }: {
     readonly gains: readonly InputSensitivity[];
     readonly offsets: readonly number[];
   },
 ): Float64Array {
-  const gain = gains.find(({ name }) => name === input);
-  if (!gain) {
+  const found = gains.find(({ name }) => name === input);
+  const gain = given ?? found?.frequency;
+  const unit = found?.unit ?? "unit";
+  if (gain === undefined) {
     const names = gains.map(({ name }) => name).join(", ");
     throw new RangeError(
       `Cannot build the budget: the input must be one of ${names}, got "${input}"`,
+    );
+  }
+  if (!Number.isFinite(gain)) {
+    throw new RangeError(
+      `Cannot build the budget: the gain of ${label} must be finite, got ${gain}`,
     );
   }
   return Float64Array.from(offsets, (offset) => {
     const own = density(offset);
     if (!(own >= 0 && own < Infinity)) {
       throw new RangeError(
-        `Cannot build the budget: the density of ${label} must be >= 0 ${gain.unit}/sqrt(Hz) and ` +
+        `Cannot build the budget: the density of ${label} must be >= 0 ${unit}/sqrt(Hz) and ` +
           `finite, got ${own} at ${offset} Hz`,
       );
     }
-    return (gain.frequency * own / offset) ** 2 / 2;
+    return (gain * own / offset) ** 2 / 2;
   });
 }
 

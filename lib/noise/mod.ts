@@ -131,3 +131,4 @@ export {
   type FittedTerm,
   type FitTerm,
 } from "./curve_fit.ts";
+export { type MaskCoverage, maskCoverage } from "./mask_coverage.ts";

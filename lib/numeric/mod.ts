@@ -16,5 +16,5 @@ export {
   levenbergMarquardt,
   type LevenbergMarquardtOptions,
 } from "./levenberg_marquardt.ts";
-export { SplineAxis, type SplineAxisOptions } from "./spline_axis.ts";
+export { SplineAxis } from "./spline_axis.ts";
 export { TensorSpline } from "./spline_tensor.ts";

@@ -3,12 +3,6 @@ import { factor, solve } from "./lu.ts";
 /** Coefficients per piece: cubic. */
 const ORDER = 4;
 
-/** How a spline goes on outside its points. */
-export interface SplineAxisOptions {
-  /** Distance below the first point over which the first piece is kept as it is. @default 0 */
-  readonly continueBelow?: number;
-}
-
 /**
  * One axis of a spline on given points: the weights of the coefficients at any place, and the coefficients
  * of given values.
@@ -29,12 +23,11 @@ export class SplineAxis {
   readonly #breaks: Float64Array;
   /** Shape (pieces, order, order): polynomials in the place inside the piece, 0 to 1, lowest power first. */
   readonly #pieces: Float64Array;
-  readonly #lowest: number;
   readonly #collocation: Float64Array;
   readonly #pivots: Int32Array;
 
   /** @throws {RangeError} when the points are not finite and strictly rising */
-  constructor(points: ArrayLike<number>, { continueBelow = 0 }: SplineAxisOptions = {}) {
+  constructor(points: ArrayLike<number>) {
     const n = points.length;
     if (!(n > 0)) throw new RangeError("Cannot make a spline: there must be a point, got none");
     for (let i = 0; i < n; i++) {
@@ -64,7 +57,6 @@ export class SplineAxis {
         this.#pieces.set(polynomial, (p * order + j) * order)
       );
     }
-    this.#lowest = points[0]! - continueBelow;
     this.#collocation = new Float64Array(n * n);
     this.#pivots = new Int32Array(n);
     const weights = new Float64Array(2 * ORDER);
@@ -93,7 +85,7 @@ export class SplineAxis {
       weights[ORDER] = 0;
       return 0;
     }
-    const edge = x < this.#lowest ? this.#lowest : x > points[last]! ? points[last]! : x;
+    const edge = x < points[0]! ? points[0]! : x > points[last]! ? points[last]! : x;
     let low = 0;
     let high = breaks.length - 1;
     while (high - low > 1) {

@@ -22,6 +22,8 @@ const INTEGER_TOLERANCE = 1e-7;
 const RANK_PROBES = [0, 0.13, -0.17];
 const STATE_ITERATIONS = 30;
 const STATE_TOLERANCE = 1e-13;
+/** Corrections below this that no longer shrink are rounding, which a stiff row amplifies. */
+const STATE_ROUNDING = 1e-9;
 /** Longest change of a state, in units of the scale, in one iteration. */
 const STATE_STEP = 2;
 
@@ -250,6 +252,7 @@ export class ChargeCoordinates {
    */
   stateOf(charge: Float64Array, chargeAt: number, x: Float64Array, xAt: number): boolean {
     const { n, r } = this;
+    let previous = Infinity;
     for (let iteration = 0; iteration < STATE_ITERATIONS; iteration++) {
       if (!this.#linearise(x, xAt)) return false;
       for (let i = 0; i < n; i++) {
@@ -261,7 +264,8 @@ export class ChargeCoordinates {
       if (!(size < Infinity)) return false;
       const damping = size > STATE_STEP ? STATE_STEP / size : 1;
       for (let j = 0; j < n; j++) x[xAt + j]! += damping * this.#change[j]!;
-      if (size < STATE_TOLERANCE) return true;
+      if (size < STATE_TOLERANCE || (size < STATE_ROUNDING && size > previous / 2)) return true;
+      previous = size;
     }
     return false;
   }

@@ -22,6 +22,9 @@ const STEADY_GROWTH = 0.1;
 /** Attempts are made at the 2nd, 4th, 7th, ... steady cycle. */
 const ATTEMPT_SPACING = 1.6;
 const TRANSIENT_STEPS = 80_000;
+/** A round that comes this close to its start, in parts of the range, has come back to it. */
+const SAME_POINT = 1e-5;
+const MOST_ROUNDS = 8;
 /** Deflection along the unstable mode from an equilibrium, in units of the scale. */
 const DEFLECTION = 0.1;
 /** Steps per period of the fastest unstable mode at the start of a transient. */
@@ -221,7 +224,8 @@ function fromTransient(
     steady++;
     if (steady < nextAttempt) continue;
     nextAttempt = Math.ceil(nextAttempt * ATTEMPT_SPACING);
-    const result = search.refine(cycle.path);
+    const rounds = search.refine(cycle.path);
+    const result = rounds instanceof Orbit ? singleRound(rounds, search) : rounds;
     if (result instanceof Orbit) {
       const size = Math.max(...rangeOf(result.discrete.path.charges, r, result.steps));
       if (!(size > KEPT_SIZE * cycle.size)) {
@@ -239,6 +243,37 @@ function fromTransient(
       last = result;
     }
   }
+}
+
+/** An orbit that goes around more than once is cut to one round and solved again. */
+function singleRound(orbit: Orbit, search: OrbitSearch): OrbitResult {
+  const { n, r } = orbit.discrete.coordinates;
+  const { method, path } = orbit.discrete;
+  const range = rangeOf(path.charges, r, orbit.steps);
+  const begin = path.charges.subarray(0, r);
+  const place = (part: number) => orbit.scaledAt(orbit.placeOf(part * orbit.period));
+  for (let rounds = MOST_ROUNDS; rounds > 1; rounds--) {
+    const { charges } = place(1 / rounds);
+    const miss = charges.reduce(
+      (most, value, i) => Math.max(most, Math.abs(value - begin[i]!) / range[i]!),
+      0,
+    );
+    if (!(miss < SAME_POINT)) continue;
+    const steps = Math.max(FEWEST_STEPS, Math.ceil(orbit.steps / rounds));
+    const mesh = Float64Array.from({ length: steps + 1 }, (_, k) => k / steps);
+    const stages = new Float64Array(steps * method.stages * n);
+    const nodes = new Float64Array((steps + 1) * r);
+    for (let step = 0; step < steps; step++) {
+      nodes.set(place(mesh[step]! / rounds).charges, step * r);
+      method.nodes.forEach((node, j) => {
+        const { state } = place((mesh[step]! + node / steps) / rounds);
+        stages.set(state, (step * method.stages + j) * n);
+      });
+    }
+    nodes.copyWithin(steps * r, 0, r);
+    return search.refine({ mesh, stages, charges: nodes, period: orbit.period / rounds });
+  }
+  return orbit;
 }
 
 function chargesOf(coordinates: ChargeCoordinates, state: Float64Array): Float64Array {

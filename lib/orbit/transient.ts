@@ -34,9 +34,9 @@ const REST_STEPS = 40;
 const REST_MOTION = 1e-9;
 /** A state this many times its scale is on its way to infinity. */
 const RUNAWAY = 1e8;
-/** Crossings far from the anchor before it moves on; one more at each move, up to the limit. */
-const MOST_CROSSINGS = 40;
-/** Steps without any crossing after which the anchor moves on. */
+/** Most points the motion may return to that are kept: most crossings within one round. */
+const MOST_ANCHORS = 24;
+/** Steps without any crossing after which a new anchor is dropped. */
 const CYCLE_STEPS = 1500;
 const CROSSING_ITERATIONS = 12;
 const CROSSING_TOLERANCE = 1e-7;
@@ -63,6 +63,14 @@ interface Step {
   /** Scaled charges at the start. */
   readonly charges: Float64Array;
   readonly stages: Float64Array;
+}
+
+/** A point that the motion may return to, with the section through it across the motion. */
+interface Anchor {
+  readonly charges: Float64Array;
+  readonly normal: Float64Array;
+  /** Place in the record of the first step that leaves it. */
+  first: number;
 }
 
 /** Running lowest and highest values that slowly forget. */
@@ -103,11 +111,9 @@ export class Transient {
   #y: Float64Array;
   #last: Step | undefined;
   readonly #start: Float64Array;
-  #anchor: Float64Array;
-  #normal: Float64Array;
-  #cycle: Step[] = [];
-  #crossings = 0;
-  #allowedCrossings = 1;
+  /** Oldest first; the record of steps begins at the oldest. */
+  #anchors: Anchor[] = [];
+  #record: Step[] = [];
   #previousSize = NaN;
   #largestSize = 0;
   #resting = 0;
@@ -132,8 +138,7 @@ export class Transient {
     this.#y = charges.slice();
     this.#chargeRange = new Ranges(charges);
     this.#stateRange = new Ranges(start);
-    this.#anchor = this.#y;
-    this.#normal = this.#direction(start);
+    this.#anchors = [{ charges: this.#y, normal: this.#direction(start), first: 0 }];
   }
 
   /** Direction of motion at a scaled state, measured in the present ranges. */
@@ -142,35 +147,40 @@ export class Transient {
     return flow.map((value, i) => value / this.#chargeRange.of(i) ** 2);
   }
 
-  /** Moves the anchor of the section to the present point and forgets the cycle so far. */
+  /** Adds an anchor at the present point. */
   #dropAnchor(): void {
     const { n } = this.#coordinates;
     const state = this.stepper.stages.slice(this.stepper.stages.length - n);
     if (!this.#coordinates.stateOf(this.#y, 0, state, 0)) return;
-    this.#anchor = this.#y;
-    this.#normal = this.#direction(state);
-    this.#cycle = [];
-    this.#crossings = 0;
+    this.#anchors.push({
+      charges: this.#y,
+      normal: this.#direction(state),
+      first: this.#record.length,
+    });
+    if (this.#anchors.length > MOST_ANCHORS) this.#anchors.shift();
+    this.#trim();
   }
 
-  /** Signed distance of scaled charges from the section through the anchor. */
-  #section(y: Float64Array): number {
-    let value = 0;
-    for (let i = 0; i < y.length; i++) value += this.#normal[i]! * (y[i]! - this.#anchor[i]!);
-    return value;
+  /** Forgets the steps before the oldest anchor. */
+  #trim(): void {
+    const gone = this.#anchors[0]?.first ?? this.#record.length;
+    if (gone === 0) return;
+    this.#record.splice(0, gone);
+    for (const anchor of this.#anchors) anchor.first -= gone;
   }
 
-  /** Distance of scaled charges from the anchor, relative to the ranges. */
-  #miss(y: Float64Array): number {
+  /** Distance of scaled charges from an anchor, relative to the ranges. */
+  #miss({ charges }: Anchor, y: Float64Array): number {
     let largest = 0;
     for (let i = 0; i < y.length; i++) {
-      largest = Math.max(largest, Math.abs(y[i]! - this.#anchor[i]!) / this.#chargeRange.of(i));
+      largest = Math.max(largest, Math.abs(y[i]! - charges[i]!) / this.#chargeRange.of(i));
     }
     return largest;
   }
 
   /**
-   * Integrates until the motion next returns to its anchor.
+   * Integrates until the motion next returns to a point it has passed, the latest where there are
+   * several: one round is found before two.
    *
    * @param stepLimit most steps this transient may have taken in all
    */
@@ -179,26 +189,26 @@ export class Transient {
       if (this.steps >= stepLimit) {
         return { status: "lost", reason: `no closed motion within ${stepLimit} time steps` };
       }
-      const before = this.#section(this.#y);
+      const before = this.#y;
       const failure = this.#advance();
       if (failure) return { status: "lost", reason: failure };
       if (this.#resting >= REST_STEPS) return { status: "at rest" };
-      if (before < 0 && this.#section(this.#y) >= 0) {
-        if (this.#miss(this.#y) < RETURN_DISTANCE) return this.#close();
-        this.#crossings++;
-      }
-      const lost = this.#crossings >= this.#allowedCrossings;
-      if (lost || this.#cycle.length > CYCLE_STEPS * this.#allowedCrossings) {
-        this.#allowedCrossings = Math.min(this.#allowedCrossings + 1, MOST_CROSSINGS);
-        this.#dropAnchor();
-      }
+      const crossed = this.#anchors.filter((anchor) =>
+        section(anchor, before) < 0 && section(anchor, this.#y) >= 0
+      );
+      const anchor = crossed.findLast((own) => this.#miss(own, this.#y) < RETURN_DISTANCE);
+      if (anchor) return this.#close(anchor);
+      const latest = this.#anchors[this.#anchors.length - 1];
+      const lost = this.#record.length - (latest?.first ?? 0) > CYCLE_STEPS;
+      if (!latest || lost || crossed.includes(latest)) this.#dropAnchor();
     }
   }
 
   /** Shortens the last step to end on the section and turns the cycle into a path. */
-  #close(): CycleOutcome {
+  #close(anchor: Anchor): CycleOutcome {
     const { r } = this.#coordinates;
-    const last = this.#cycle.pop()!;
+    const cycle = this.#record.slice(anchor.first);
+    const last = cycle.pop()!;
     const { stepper } = this;
     const end = this.#y;
     let low = 0;
@@ -208,45 +218,30 @@ export class Transient {
     for (let iteration = 0; iteration < CROSSING_ITERATIONS; iteration++) {
       h = (low + high) / 2;
       if (iteration === 0) {
-        const start = this.#section(last.charges);
-        const slope = this.#section(end) - start;
+        const start = section(anchor, last.charges);
+        const slope = section(anchor, end) - start;
         h = Math.min(Math.max(-start / slope, 0.02), 0.98) * last.h;
       }
       stepper.stages.set(last.stages);
       if (!stepper.solve(last.charges, { h, tolerance: STEP_TOLERANCE })) break;
       stepper.advance(last.charges, { h, end: y });
-      const place = this.#section(y);
+      const place = section(anchor, y);
       if (Math.abs(high - low) < CROSSING_TOLERANCE * last.h) break;
       if (place < 0) low = h;
       else high = h;
     }
     const closing: Step = { h, charges: last.charges, stages: stepper.stages.slice() };
-    const size = this.#cycleSize();
+    const size = sizeOf(cycle);
     const growth = Math.log(size / this.#previousSize);
-    const path = pathOf([...this.#cycle, closing]);
+    const path = pathOf([...cycle, closing]);
     // Time goes on from the end of the whole last step.
     stepper.stages.set(last.stages);
-    this.#cycle.push(last);
     this.#previousSize = size;
     this.#largestSize = Math.max(this.#largestSize, size);
+    this.#anchors = [];
     this.#dropAnchor();
     if (size < DYING * this.#largestSize && growth < 0) return { status: "at rest" };
     return { status: "closed", path, size, growth };
-  }
-
-  #cycleSize(): number {
-    const { r } = this.#coordinates;
-    let size = 0;
-    for (let i = 0; i < r; i++) {
-      let low = Infinity;
-      let high = -Infinity;
-      for (const step of this.#cycle) {
-        low = Math.min(low, step.charges[i]!);
-        high = Math.max(high, step.charges[i]!);
-      }
-      size = Math.max(size, high - low);
-    }
-    return size;
   }
 
   /** One accepted step; a failure in words. */
@@ -277,7 +272,7 @@ export class Transient {
       stepper.advance(this.#y, { h, end });
       const before = this.#last?.stages.subarray(lastStage) ?? this.#start;
       this.#last = { h, charges: this.#y, stages: stepper.stages.slice() };
-      this.#cycle.push(this.#last);
+      this.#record.push(this.#last);
       // Stage states, not charges: behind steps longer than every time constant the charges only
       // change sign, while the stages lie at the equilibrium.
       let motion = 0;
@@ -316,6 +311,29 @@ export class Transient {
       }
     }
   }
+}
+
+/** Signed distance of scaled charges from the section through an anchor. */
+function section({ charges, normal }: Anchor, y: Float64Array): number {
+  let value = 0;
+  for (let i = 0; i < y.length; i++) value += normal[i]! * (y[i]! - charges[i]!);
+  return value;
+}
+
+/** Largest range of a scaled charge over a cycle. */
+function sizeOf(cycle: readonly Step[]): number {
+  const count = cycle[0]?.charges.length ?? 0;
+  let size = 0;
+  for (let i = 0; i < count; i++) {
+    let low = Infinity;
+    let high = -Infinity;
+    for (const { charges } of cycle) {
+      low = Math.min(low, charges[i]!);
+      high = Math.max(high, charges[i]!);
+    }
+    size = Math.max(size, high - low);
+  }
+  return size;
 }
 
 function pathOf(cycle: readonly Step[]): Path {

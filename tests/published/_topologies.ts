@@ -59,16 +59,19 @@ export function run<Design>(
   };
 }
 
-/** Factor at which the devices' capacitances have lost their weight. */
-export const SLOW = 1e5;
+/** Frequency of the slow tanks: a million times below those of use, so that the devices' capacitances vanish [Hz]. */
+const SLOW = 5e3;
 
-/** A tank `factor` times slower at the same resistance: coil and capacitor that much larger. */
-export function slowedTank(tank: TankDesign, factor: number): TankDesign {
+/** A slow tank of a resistance [ohm] and a quality factor [1]. */
+export function slowTank(
+  { resistance, quality }: { resistance: number; quality: number },
+): TankDesign {
+  const angular = 2 * Math.PI * SLOW;
   return {
-    ...tank,
-    inductance: tank.inductance * factor,
-    capacitance: tank.capacitance * factor,
-    qualityFrequency: tank.qualityFrequency / factor,
+    inductance: resistance / quality / angular,
+    quality,
+    qualityFrequency: SLOW,
+    capacitance: quality / resistance / angular,
   };
 }
 

@@ -36,6 +36,17 @@ Deno.test("findOrbit() finds the same orbit from a state, an equilibrium and a n
   }
 });
 
+Deno.test("findOrbit() finds one round, not two, where the motion grows much in each cycle", () => {
+  // Growth by 1.5 to 4 times a cycle; a second round may come nearer to its start than the first.
+  for (const gain of [3, 4.7, 7, 10]) {
+    for (const quality of [5, 10, 15]) {
+      const { system } = tanhOscillator({ quality, gain });
+      const orbit = orbitOf(system, { start: findEquilibrium(system) });
+      assertClose(orbit.frequency, 1 / (2 * Math.PI), { rtol: 0.05, atol: 0, what: "frequency" });
+    }
+  }
+});
+
 Deno.test("findOrbit() keeps steps and stages as asked", () => {
   const { system, start } = vanDerPol(1);
   for (const stages of [2, 3, 4]) {
