@@ -54,7 +54,43 @@ export { chart, type ChartOptions } from "./show/chart.ts";
 export { conditionText } from "./show/condition_text.ts";
 export { figure } from "./show/figure.ts";
 export { formula, type FormulaOptions } from "./show/formula.ts";
+export {
+  amplitudeNoiseChart,
+  contributorsChart,
+  noiseCurveChart,
+  type NoiseCurveChartOptions,
+} from "./show/noise_views_curve.ts";
+export {
+  foldingsTable,
+  sensitivityChart,
+  type SensitivityChartOptions,
+  sensitivityTable,
+} from "./show/noise_views_sensitivity.ts";
+export {
+  ceilingTable,
+  contributorsTable,
+  type ContributorsTableOptions,
+  derivativesTable,
+  type IntegralRow,
+  integralsTable,
+  suggestionsTable,
+} from "./show/noise_views_tables.ts";
+export { noiseVerdict, type NoiseVerdictOptions } from "./show/noise_views_verdict.ts";
 export { type SeriesStyle, seriesStyle } from "./show/palette.ts";
+export {
+  inductanceMap,
+  type InductanceMapOptions,
+  type InductanceMark,
+} from "./show/inductance_views.ts";
+export {
+  type InductanceLine,
+  type InductanceOutcome,
+  inductanceTable,
+  type InductanceTableOptions,
+  inductanceTrendChart,
+  inductanceTrendTable,
+  inductorFamilyChart,
+} from "./show/inductance_views_tables.ts";
 export type {
   DeclaredField,
   Figure,
@@ -66,6 +102,7 @@ export type {
 } from "./show/payload.ts";
 export { progress } from "./show/progress.ts";
 export { quantity, type QuantityOptions } from "./show/quantity.ts";
+export { maskChart, type MaskChartOptions, maskTable } from "./show/requirement_views.ts";
 export { schematic, type SchematicOptions } from "./show/schematic.ts";
 export { type Share, shareChart, type ShareChartOptions } from "./show/share_chart.ts";
 export { show } from "./show/show.ts";
@@ -75,5 +112,13 @@ export { stressVerdict, type StressVerdictOptions } from "./show/stress_verdict.
 export { sweepChart, type SweepChartOptions } from "./show/sweep_chart.ts";
 export type { TableCell, TableColumn } from "./show/table_parts.ts";
 export { table, type TableOptions } from "./show/table.ts";
+export {
+  quietest,
+  topologyChart,
+  type TopologyChartOptions,
+  type TopologyEntry,
+  topologyTable,
+  type TopologyViewOptions,
+} from "./show/topology_views.ts";
 export { verdict, type VerdictOptions } from "./show/verdict.ts";
 export { type Trace, waveform, type WaveformOptions } from "./show/waveform.ts";

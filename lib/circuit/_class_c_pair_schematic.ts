@@ -37,7 +37,7 @@ export interface ClassCSchematicValues {
 const TERMINALS = 9;
 const CROSS = 12;
 const GATES = 17;
-const SOURCES = GATES + 2;
+const SOURCES = GATES + 9;
 const TAIL = SOURCES + 3;
 /** Column of the filtered bias. */
 const BIAS = 30;
@@ -59,26 +59,25 @@ export function classCSchematic(values: ClassCSchematicValues): Schematic {
             value: pair.width,
           }),
           symbol("transistor n", "pair minus", { at: [MINUS - 1, GATES], value: pair.width }),
-          symbol("capacitor", "coupling plus", {
+          symbol("capacitor", "block plus", {
             at: [PLUS + 3, GATES - 2],
             mirrored: true,
             value: values.couplingCapacitance,
           }),
-          symbol("capacitor", "coupling minus", {
+          symbol("capacitor", "block minus", {
             at: [MINUS - 3, GATES - 2],
             value: values.couplingCapacitance,
           }),
-          symbol("resistor", "gate resistor plus", {
-            at: [PLUS + 4, GATES],
-            turn: 1,
+          symbol("resistor", "bias plus", {
+            at: [PLUS + 3, GATES + 2],
             value: values.biasResistance,
           }),
-          symbol("resistor", "gate resistor minus", {
-            at: [MINUS - 4, GATES],
-            turn: 1,
+          symbol("resistor", "bias minus", {
+            at: [MINUS - 3, GATES + 5],
+            mirrored: true,
             value: values.biasResistance,
           }),
-          symbol("label", "bias", { at: [MIDDLE, GATES - 1] }),
+          symbol("label", "bias", { at: [MIDDLE, GATES + 8] }),
           symbol("label", "gate bias", { at: [BIAS, GATES - 5] }),
           symbol("resistor", "bias filter", {
             at: [BIAS, GATES - 3],
@@ -93,7 +92,14 @@ export function classCSchematic(values: ClassCSchematicValues): Schematic {
           [[MINUS - 2, GATES], [MINUS - 3, GATES], [MINUS - 3, GATES - 1]],
           [[PLUS + 3, GATES - 3], [PLUS + 3, GATES - 4], [MINUS - 3, CROSS], [MINUS, CROSS]],
           [[MINUS - 3, GATES - 3], [MINUS - 3, GATES - 4], [PLUS + 3, CROSS], [PLUS, CROSS]],
-          [[MIDDLE, GATES], [MIDDLE, GATES - 1]],
+          [[PLUS + 3, GATES], [PLUS + 3, GATES + 1]],
+          [[MINUS - 3, GATES], [MINUS - 3, GATES + 4]],
+          // Staggered, so that both have room for their text.
+          [[PLUS + 3, GATES + 3], [PLUS + 3, GATES + 7], [MINUS - 3, GATES + 7], [
+            MINUS - 3,
+            GATES + 6,
+          ]],
+          [[MIDDLE, GATES + 7], [MIDDLE, GATES + 8]],
           [[PLUS, GATES + 1], [PLUS, SOURCES], [MINUS, SOURCES], [MINUS, GATES + 1]],
           [[BIAS, GATES - 5], [BIAS, GATES - 4]],
           [[BIAS, GATES - 2], [BIAS, GATES - 1], [BIAS + 2, GATES - 1]],
@@ -103,7 +109,7 @@ export function classCSchematic(values: ClassCSchematicValues): Schematic {
           [MINUS, CROSS],
           [PLUS + 3, GATES],
           [MINUS - 3, GATES],
-          [MIDDLE, GATES],
+          [MIDDLE, GATES + 7],
           [MIDDLE, SOURCES],
         ],
       },

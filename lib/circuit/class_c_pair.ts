@@ -95,12 +95,12 @@ export const classCPair: Topology<ClassCPairDesign> = {
         ["tail capacitor", ["tail", GROUND], tailCapacitance],
         ["mirror capacitor", ["mirror", GROUND], design.mirrorCapacitance],
         ["bias capacitor", ["bias", GROUND], biasFilter.capacitance],
-        ["coupling plus", ["minus", "gate plus"], couplingCapacitance],
-        ["coupling minus", ["plus", "gate minus"], couplingCapacitance],
+        ["block plus", ["minus", "gate plus"], couplingCapacitance],
+        ["block minus", ["plus", "gate minus"], couplingCapacitance],
       ]),
       resistor("bias filter", ["gate bias", "bias"], biasFilter.resistance),
-      resistor("gate resistor plus", ["bias", "gate plus"], biasResistance),
-      resistor("gate resistor minus", ["bias", "gate minus"], biasResistance),
+      resistor("bias plus", ["bias", "gate plus"], biasResistance),
+      resistor("bias minus", ["bias", "gate minus"], biasResistance),
       ...(["plus", "minus"] as const).map((side) =>
         shop.transistor(`pair ${side}`, {
           kind: "n",
@@ -160,7 +160,7 @@ export const classCPair: Topology<ClassCPairDesign> = {
         pair: ["pair plus", "pair minus"],
         tail: ["tail"],
         mirror: ["mirror"],
-        bias: ["bias filter", "gate resistor plus", "gate resistor minus"],
+        bias: ["bias filter", "bias plus", "bias minus"],
       },
     };
   },

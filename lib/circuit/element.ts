@@ -6,7 +6,8 @@
  * @module
  */
 import { BOLTZMANN } from "../quantity/constants.ts";
-import { type Transistor, TRANSISTOR_VALUES } from "../device/transistor.ts";
+import { TRANSISTOR_VALUES } from "../device/transistor.ts";
+import type { TransistorModel } from "../device/transistor_model.ts";
 
 /** Name of the reference node. */
 export const GROUND = "ground";
@@ -89,7 +90,7 @@ export interface DeviceElement {
   readonly evaluate: (v: Float64Array, out: Float64Array) => void;
   readonly noise: readonly DeviceNoise[];
   /** The transistor, when it is one, for limits and operating points. */
-  readonly transistor?: Transistor;
+  readonly transistor?: TransistorModel;
 }
 
 /** Anything a circuit is made of. */
@@ -116,7 +117,7 @@ export function deviceValues(terminals: number): number {
  */
 export function transistorElement(
   name: string,
-  transistor: Transistor,
+  transistor: TransistorModel,
   { drain, gate, source, bulk }: { drain: string; gate: string; source: string; bulk: string },
 ): DeviceElement {
   if (deviceValues(4) !== TRANSISTOR_VALUES) {

@@ -7,12 +7,6 @@ import type { Startup } from "./startup.ts";
 
 /** Most time steps spent on a kick: a motion that dies out shows it within a few hundred cycles. */
 const KICK_STEPS = 20_000;
-/** Most times a closed motion is suspected to run through its orbit. */
-const MOST_ROUNDS = 8;
-/** Two states closer than this part of the motion are the same. */
-const SAME = 1e-4;
-/** Where on the orbit a single round is looked for. */
-const PLACES = [0, 0.21, 0.37, 0.58, 0.83];
 /** Fundamental of the tank voltage over half an output's swing, below which the motion is in another mode. */
 const IN_TANK = 0.1;
 
@@ -33,16 +27,13 @@ export function oscillation(
   { started, tolerance, transientSteps }: OscillationOptions,
 ): OrbitResult {
   const { circuit: { system }, kick } = oscillator;
-  const settings: Settings = {
+  const settings = {
     ...(tolerance === undefined ? {} : { tolerance }),
     ...(transientSteps === undefined ? {} : { transientSteps }),
   };
   if (started.starts || !kick) {
-    const grown = singleRound(
-      findOrbit(system, { start: tankFirst(started), ...settings }),
-      settings,
-    );
-    const elsewhere = (grown instanceof Orbit ? grown : grown.orbit) ?? undefined;
+    const grown = findOrbit(system, { start: tankFirst(started), ...settings });
+    const elsewhere = grown instanceof Orbit ? grown : grown.orbit;
     if (!elsewhere || inTank(oscillator, elsewhere)) {
       if (grown instanceof Orbit || !kick || !started.otherUnstable.length) return grown;
     } else if (!kick) {
@@ -50,15 +41,10 @@ export function oscillation(
     }
   }
   const { state: start, period } = kick;
-  const kicked = singleRound(
-    findOrbit(system, { start, period, transientSteps: KICK_STEPS, ...settings }),
-    settings,
-  );
+  const kicked = findOrbit(system, { start, period, transientSteps: KICK_STEPS, ...settings });
   const orbit = kicked instanceof Orbit ? kicked : kicked.orbit;
   return orbit && !inTank(oscillator, orbit) ? otherMode(orbit) : kicked;
 }
-
-type Settings = Pick<FindOrbitOptions, "tolerance" | "transientSteps">;
 
 /** Whether an orbit moves the tank voltage at its own frequency. */
 function inTank({ circuit, tank }: BuiltOscillator, orbit: Orbit): boolean {
@@ -83,54 +69,6 @@ function otherMode(orbit: Orbit): OrbitResult {
     } Hz without tank voltage`,
     { work: orbit.work },
   );
-}
-
-/**
- * One round of an orbit that was found as several: two or more rounds close as well as one, and a first
- * return may be overlooked where the motion jumps within a time step.
- */
-function singleRound(found: OrbitResult, settings: Settings): OrbitResult {
-  const rounds = found instanceof Orbit ? roundsOf(found) : 1;
-  if (!(found instanceof Orbit) || rounds === 1) return found;
-  for (const place of PLACES) {
-    const single = findOrbit(found.system, {
-      start: found.at(place * found.period / rounds),
-      period: found.period / rounds,
-      ...settings,
-    });
-    if (!(single instanceof Orbit) || roundsOf(single) === 1) return single;
-  }
-  return orbitFailure(
-    "no convergence",
-    `the closed motion found runs through the orbit ${rounds} times, and a single round was not found`,
-    { work: found.work },
-  );
-}
-
-/** How many times a closed motion runs through the same states. */
-function roundsOf(orbit: Orbit): number {
-  const { times, states } = orbit.samples;
-  const n = orbit.system.dimension;
-  const scale = orbit.system.scale ?? new Float64Array(n).fill(1);
-  let largest = 0;
-  for (let j = 0; j < n; j++) {
-    let [low, high] = [Infinity, -Infinity];
-    for (let k = 0; k < times.length; k++) {
-      const value = states[k * n + j] ?? NaN;
-      low = Math.min(low, value);
-      high = Math.max(high, value);
-    }
-    largest = Math.max(largest, (high - low) / (scale[j] ?? 1));
-  }
-  const first = orbit.at(0);
-  for (let rounds = MOST_ROUNDS; rounds > 1; rounds--) {
-    const later = orbit.at(orbit.period / rounds);
-    const same = first.every((value, j) =>
-      Math.abs(value - (later[j] ?? NaN)) / (scale[j] ?? 1) < SAME * largest
-    );
-    if (same) return rounds;
-  }
-  return 1;
 }
 
 /** The equilibrium with the tank's pole in the first place, where the engine takes its direction from. */

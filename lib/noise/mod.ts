@@ -132,3 +132,4 @@ export {
   type FitTerm,
 } from "./curve_fit.ts";
 export { type MaskCoverage, maskCoverage } from "./mask_coverage.ts";
+export { type Neighbour, radioDemands, type RadioNumbers } from "./radio_demands.ts";
