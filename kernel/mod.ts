@@ -56,6 +56,8 @@ export { figure } from "./show/figure.ts";
 export { formula, type FormulaOptions } from "./show/formula.ts";
 export {
   amplitudeNoiseChart,
+  type ContributorGroup,
+  contributorGroups,
   contributorsChart,
   noiseCurveChart,
   type NoiseCurveChartOptions,
@@ -71,6 +73,7 @@ export {
   contributorsTable,
   type ContributorsTableOptions,
   derivativesTable,
+  explanationsTable,
   type IntegralRow,
   integralsTable,
   suggestionsTable,

@@ -52,8 +52,8 @@ export interface InductanceMapOptions {
   readonly limits?: readonly FamilyLimit[];
   /** Points to mark, such as the proposed and the recommended one. @default none */
   readonly points?: readonly InductanceMark[];
-  /** What keeps the inductance from being smaller, for the summary. @default not said */
-  readonly binding?: BindingLimit;
+  /** What keeps the inductance from being smaller, and where, for the summary. @default not said */
+  readonly binding?: readonly { readonly where: string; readonly limit: BindingLimit }[];
 }
 
 /**
@@ -69,7 +69,8 @@ export function inductanceMap(
   columns: readonly InductanceColumn[],
   options: InductanceMapOptions,
 ): Showable {
-  const { offset, kneeMultiple, loopGain, mostPower, limits = [], points = [], binding } = options;
+  const { offset, kneeMultiple, loopGain, mostPower, limits = [], points = [], binding = [] } =
+    options;
   const frame = new MapFrame(columns);
   const levels = contourLevels(frame.grid.z);
   const title = "Inductance against bias current";
@@ -151,9 +152,9 @@ export function inductanceMap(
       ...marks.map((mark) => pointReading(mark, { frame, columns })),
       ...limits.map(limitReading),
       ...truths(columns, { kneeMultiple, fixed: points[0]?.current, frame }),
-      ...(binding === undefined
-        ? []
-        : [`what keeps the inductance from being smaller: ${binding}`]),
+      ...binding.map(({ where, limit }) =>
+        `what keeps the inductance from being smaller ${where}: ${limit}`
+      ),
     ],
   });
 }

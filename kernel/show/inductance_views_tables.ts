@@ -90,8 +90,8 @@ export function inductanceTrendTable({ name, points }: InductanceLine): Showable
       { name: "computed", unit: "dBc/Hz" },
       { name: "closed form", unit: "dBc/Hz" },
       { name: "computed less closed form", unit: "dB", digits: 2 },
-      { name: "d ln noise / d ln L, computed" },
-      { name: "closed form's" },
+      { name: "d ln noise / d ln L, computed", digits: 3 },
+      { name: "closed form's", digits: 3 },
       { name: "its assumptions" },
     ],
     rows: points.map((point): TableCell[] => {
@@ -113,7 +113,7 @@ export function inductanceTrendTable({ name, points }: InductanceLine): Showable
 }
 
 function assumptions(broken: number): string {
-  return broken === 0 ? "hold" : broken === 1 ? "one does not hold" : `${broken} do not hold`;
+  return broken === 0 ? "hold" : `${broken} broken`;
 }
 
 /** An answer of the search, or why there is none; the sensitivity belongs to a search at fixed current. */
@@ -165,7 +165,7 @@ export function inductanceTable(
       { name: "smallest at the proposed current" },
       { name: "smallest at the recommended current" },
     ],
-    rows: [
+    rows: withoutEmpty([
       ofAnswers("found", ({ status }) => status === "found" ? "yes" : "no, nearest shown"),
       row("inductance", ({ inductance }) => text(inductance, "H")),
       row("programmed current", ({ current }) => text(current, "A")),
@@ -192,8 +192,13 @@ export function inductanceTable(
         null,
       ],
       ...(byTrial === undefined ? [] : [trialRow(smallest, byTrial)]),
-    ],
+    ]),
   });
+}
+
+/** Rows that say something beside their name. */
+function withoutEmpty(rows: readonly TableCell[][]): TableCell[][] {
+  return rows.filter(([, ...cells]) => cells.some((cell) => cell !== null));
 }
 
 function trialRow(

@@ -25,7 +25,7 @@ const ROOM = 8;
 /** Asymptotes this far below the total, or above it, tell nothing [dB]. */
 const FAR = 30;
 /** A source below this share at every offset goes into "others". */
-const SMALL_SHARE = 0.02;
+const SMALL_SHARE = 0.03;
 const MASK_STYLE: SeriesStyle = { color: "currentColor", dash: "", symbol: "triangle" };
 
 /** Options of {@linkcode noiseCurveChart}. */

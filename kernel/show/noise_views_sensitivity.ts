@@ -14,6 +14,8 @@ import type { TableCell } from "./table_parts.ts";
 
 /** Highest harmonic with a column of its own. */
 const SHOWN_HARMONICS = 4;
+/** A mean this small against the rms is zero. */
+const ROUNDING = 1e-6;
 
 /** What {@linkcode sensitivityChart} draws. */
 export interface SensitivityChartOptions {
@@ -60,7 +62,7 @@ export function sensitivityTable(views: readonly SensitivityView[]): Showable {
   return table({
     caption: `Sensitivities over one period, in ${
       views[0]?.scale ?? "s/C"
-    }; 1/f noise counts by the mean, white by the rms`,
+    }; 1/f noise counts by the mean, white by the rms; 1/f sources at 1 Hz`,
     columns: [
       { name: "source" },
       { name: "loudest, per root hertz", unit: "A", digits: 3 },
@@ -75,7 +77,8 @@ export function sensitivityTable(views: readonly SensitivityView[]): Showable {
       view.rms.sensitivity,
       view.rms.effective,
       view.rms.sensitivity > 0 ? view.rms.effective / view.rms.sensitivity : null,
-      view.mean.effective,
+      // Below this the mean is rounding.
+      Math.abs(view.mean.effective) > ROUNDING * view.rms.effective ? view.mean.effective : 0,
     ]),
   });
 }

@@ -7,13 +7,19 @@ import type { BuiltOscillator } from "../../lib/circuit/topology.ts";
 import type { WhatIf } from "../../lib/design/what_if.ts";
 import type { NoiseBudget } from "../../lib/noise/budget.ts";
 import type { CeilingJudgement } from "../../lib/noise/ceiling.ts";
+import type { CurveExplanation } from "../../lib/noise/explain_curve.ts";
 import type { IntegratedPhaseNoise } from "../../lib/noise/integrals.ts";
 import { formatQuantity } from "../../lib/quantity/format_quantity.ts";
-import { contributorGroups } from "./noise_views_curve.ts";
+import { type ContributorGroup, contributorGroups } from "./noise_views_curve.ts";
 import type { CsvOptions } from "./bias_tables.ts";
 import type { Showable } from "./showable.ts";
 import { table } from "./table.ts";
 import type { TableCell, TableColumn } from "./table_parts.ts";
+
+/** Shares, decibels and relative changes are rounded to these steps [1], [dB], [1]. */
+const SHARE_STEP = 1e-4;
+const DECIBEL_STEP = 1e-3;
+const CHANGE_STEP = 1e-5;
 
 /** Options of {@linkcode contributorsTable}. */
 export interface ContributorsTableOptions extends CsvOptions {
@@ -31,12 +37,13 @@ export function contributorsTable(
   const places = [...new Set(offsets.map((offset) => nearest(budget.offsets, offset)))];
   const sums = budget.total.map((level) => 10 ** (level / 10));
   const groups = contributorGroups(budget, { parts });
-  const last = places.at(-1) ?? 0;
+  const largest = ({ phase }: ContributorGroup) =>
+    Math.max(...places.map((k) => phase[k]! / sums[k]!));
   const rows = groups
-    .toSorted((a, b) => b.phase[last]! - a.phase[last]!)
+    .toSorted((a, b) => largest(b) - largest(a))
     .map(({ name, phase }): TableCell[] => [
       name,
-      ...places.flatMap((k) => [decibel(phase[k]!), phase[k]! / sums[k]!]),
+      ...places.flatMap((k) => [decibel(phase[k]!), rounded(phase[k]! / sums[k]!, SHARE_STEP)]),
     ]);
   return table({
     caption: "Contributors at stated offsets",
@@ -89,16 +96,49 @@ export function ceilingTable(
   { limit, losses, figureOfMerit, assumptions }: CeilingJudgement,
 ): Showable {
   const signed = (value: number) => formatQuantity(value === 0 ? 0 : -value, "dB");
+  const about: Readonly<Record<string, string>> = {
+    efficiency: "fundamental in the tank's loss over supply power",
+    "noise factor": "all white sources over the tank's loss",
+    distortion: "harmonics of the tank voltage",
+    "not accounted for": "amplitude turned into phase, noise through reactive paths",
+  };
   return table({
-    caption: `Figure of merit below its thermodynamic limit. Assumptions: ${
-      assumptions.join("; ")
-    }`,
-    columns: [{ name: "step" }, { name: "value" }],
+    caption: "Figure of merit below its thermodynamic limit",
+    columns: [{ name: "step" }, { name: "value" }, { name: "what it is" }],
     rows: [
-      ["limit for the loaded quality factor", formatQuantity(limit, "dBc/Hz")],
-      ...losses.map(({ name, decibels }): TableCell[] => [name, signed(decibels)]),
-      ["figure of merit", formatQuantity(figureOfMerit, "dBc/Hz")],
+      [
+        "limit for the loaded quality factor",
+        formatQuantity(limit, "dBc/Hz"),
+        assumptions.join("; "),
+      ],
+      ...losses.map(({ name, decibels }): TableCell[] => [
+        name,
+        signed(decibels),
+        about[name] ?? null,
+      ]),
+      ["figure of merit", formatQuantity(figureOfMerit, "dBc/Hz"), "as computed, white noise"],
     ],
+  });
+}
+
+/** Which contributor alone would have to be off by how much to explain a measured or simulated curve. */
+export function explanationsTable({ explanations, rms }: CurveExplanation): Showable {
+  return table({
+    caption: `What would explain the curve, which lies ${
+      formatQuantity(rms, "dB")
+    } rms from the budget: each contributor taken as the only one that is off`,
+    columns: [
+      { name: "contributor" },
+      { name: "off by", unit: "dB", digits: 3 },
+      { name: "rms left", unit: "dB", digits: 2 },
+      { name: "can the curve tell it from the best?" },
+    ],
+    rows: explanations.map(({ name, decibels, rms: left, asGood }, k): TableCell[] => [
+      name,
+      decibels,
+      left,
+      k === 0 ? "it is the best" : asGood ? "no" : "yes",
+    ]),
   });
 }
 
@@ -118,11 +158,11 @@ export function derivativesTable({ derivatives }: WhatIf): Showable {
       { name, unit, value, noise, amplitude, power, frequency },
     ): TableCell[] => [
       name,
-      formatQuantity(value, unit, { digits: 3 }),
-      perCent(noise),
-      perCent(amplitude),
-      perCent(power),
-      perCent(frequency),
+      formatQuantity(value, unit, { digits: 3 }).replaceAll(" ", "\u00a0"),
+      perCent(noise, DECIBEL_STEP),
+      perCent(amplitude, CHANGE_STEP),
+      perCent(power, CHANGE_STEP),
+      perCent(frequency, CHANGE_STEP),
     ]),
   });
 }
@@ -164,8 +204,13 @@ export function suggestionsTable({ suggestions, now }: WhatIf): Showable {
 }
 
 /** Per e-fold to per one per cent more. */
-function perCent(fold: number | undefined): number | null {
-  return fold === undefined ? null : fold * Math.log(1.01);
+function perCent(fold: number | undefined, step: number): number | null {
+  return fold === undefined ? null : rounded(fold * Math.log(1.01), step);
+}
+
+function rounded(value: number, step: number): number {
+  // Adding zero takes the sign off minus zero.
+  return Math.round(value / step) * step + 0;
 }
 
 function decibel(power: number): number | null {

@@ -101,8 +101,8 @@ export function maskTable(mask: Mask, { csv }: CsvOptions = {}): Showable {
       { name: "follows from" },
     ],
     rows: mask.pieces.map(({ from, to, level, slope, origin }): TableCell[] => [
-      formatQuantity(from, "Hz"),
-      to === Infinity ? "no end" : formatQuantity(to, "Hz"),
+      unbroken(formatQuantity(from, "Hz")),
+      to === Infinity ? "no end" : unbroken(formatQuantity(to, "Hz")),
       level,
       slope,
       origin.label,
@@ -110,4 +110,9 @@ export function maskTable(mask: Mask, { csv }: CsvOptions = {}): Showable {
     ]),
     ...(csv === undefined ? {} : { csv }),
   });
+}
+
+/** A narrow column does not part a number from its unit. */
+function unbroken(text: string): string {
+  return text.replaceAll(" ", "\u00a0");
 }

@@ -41,12 +41,13 @@ export function topologyTable(
 ): Showable {
   const noise = ({ result }: TopologyEntry) => result.figures?.phaseNoise ?? Infinity;
   const order = [...entries].sort((a, b) => noise(a) - noise(b));
+  const remarks = order.map(({ result }) => remark(result));
+  const withRemarks = remarks.some((text) => text !== null);
   return table({
     caption:
       "Topologies with one coil, frequency, supply and power; nominal but for the worst loop gain",
     columns: [
       { name: "topology" },
-      { name: "chosen" },
       { name: "programmed current", unit: "A", digits: 3 },
       { name: "amplitude", unit: "V", digits: 3 },
       { name: "loop gain", digits: 3 },
@@ -55,14 +56,12 @@ export function topologyTable(
       { name: "noise factor", digits: 3 },
       { name: "figure of merit", unit: "dBc/Hz", digits: 4 },
       { name: "highest share of a voltage limit", unit: "%", digits: 3 },
-      { name: "in" },
-      { name: "remark" },
+      ...(withRemarks ? [{ name: "remark" }] : []),
     ],
-    rows: order.map(({ result, worstLoopGain }): TableCell[] => {
+    rows: order.map(({ result, worstLoopGain }, row): TableCell[] => {
       const { name, figures, stresses: [worst] } = result;
       return [
-        name,
-        name === chosen ? "\u2190" : null,
+        name === chosen ? `${name} (chosen)` : name,
         figures ? result.current : null,
         known(figures?.amplitude),
         known(result.loopGain),
@@ -71,8 +70,7 @@ export function topologyTable(
         known(figures?.noiseFactor),
         known(figures?.figureOfMerit),
         worst === undefined ? null : worst.peak / worst.limit,
-        worst === undefined ? null : `${worst.quantity} of ${worst.device}`,
-        remark(result),
+        ...(withRemarks ? [remarks[row] ?? null] : []),
       ];
     }),
   });
@@ -203,7 +201,12 @@ export function topologyChart(
   return chartFigure({ title, description, drawings: [{ svg }], readings });
 }
 
-/** The lowest noise of the topologies whose worst loop gain is enough [dBc/Hz]; undefined where none is. */
+/**
+ * The lowest noise of the topologies whose worst loop gain is enough.
+ *
+ * @param leastLoopGain asked for at the worst corner [1]
+ * @returns [dBc/Hz]; undefined where none has enough
+ */
 export function quietest(
   entries: readonly TopologyEntry[],
   leastLoopGain: number,

@@ -77,7 +77,7 @@ export function ruleFamily(options: RuleFamilyOptions): InductorFamily {
     throw familyError(`exponent must be a finite number, got ${exponent}`);
   }
   return {
-    name: "quality factor by a rule",
+    name: "coils by a rule",
     smallest,
     largest,
     member(inductance) {

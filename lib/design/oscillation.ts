@@ -33,12 +33,11 @@ export function oscillation(
   };
   if (started.starts || !kick) {
     const grown = findOrbit(system, { start: tankFirst(started), ...settings });
-    const elsewhere = grown instanceof Orbit ? grown : grown.orbit;
-    if (!elsewhere || inTank(oscillator, elsewhere)) {
-      if (grown instanceof Orbit || !kick || !started.otherUnstable.length) return grown;
-    } else if (!kick) {
-      return otherMode(elsewhere);
-    }
+    const motion = grown instanceof Orbit ? grown : grown.orbit;
+    const astray = motion !== undefined && !inTank(oscillator, motion);
+    const final = grown instanceof Orbit || started.otherUnstable.length === 0;
+    if (!kick) return astray ? otherMode(motion) : grown;
+    if (!astray && final) return grown;
   }
   const { state: start, period } = kick;
   const kicked = findOrbit(system, { start, period, transientSteps: KICK_STEPS, ...settings });

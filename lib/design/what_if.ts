@@ -27,6 +27,10 @@ export interface DesignParameter<Design> {
   read(design: Design): number;
   /** The design with another value. */
   write(design: Design, value: number): Design;
+  /** Least value that the process or the plan allows, in SI. @default none */
+  readonly atLeast?: number;
+  /** Greatest value allowed, in SI. @default none */
+  readonly atMost?: number;
 }
 
 /** Where and how noise is judged. */
@@ -91,7 +95,7 @@ export interface WhatIf {
 
 /**
  * Derivatives of phase noise, amplitude, power and frequency by each parameter, from orbits
- * solved again at 0.2 % on either side, and for each parameter the change that would bring the asked
+ * solved again 0.2 % to either side, or to one where a limit is in the way, and for each parameter the change that would bring the asked
  * improvement, at most by a factor of two, solved again.
  *
  * @param improvement how much lower the noise should be [dB], above zero
@@ -111,21 +115,27 @@ export function whatIf<Design>(
   if (!now) return undefined;
   const derivatives = options.parameters.map((parameter): NoiseDerivative => {
     const value = parameter.read(design);
-    const at = (factor: number) => solve(parameter.write(design, value * factor));
-    const [above, below] = value > 0
-      ? [at(1 + DERIVATIVE_STEP), at(1 - DERIVATIVE_STEP)]
-      : [undefined, undefined];
-    const span = Math.log((1 + DERIVATIVE_STEP) / (1 - DERIVATIVE_STEP));
-    const log = (read: (figures: OperatingFigures) => number) =>
-      above && below ? Math.log(read(above.figures) / read(below.figures)) / span : undefined;
+    const points = stencil(parameter, value).map(({ fold, weight }) => ({
+      weight,
+      point: fold === 0 ? now : solve(parameter.write(design, value * Math.exp(fold))),
+    }));
+    const slope = (read: (point: WhatIfPoint) => number): number | undefined => {
+      if (points.length === 0) return undefined;
+      let sum = 0;
+      for (const { weight, point } of points) {
+        if (!point) return undefined;
+        sum += weight * read(point);
+      }
+      return sum;
+    };
     return {
       name: parameter.name,
       unit: parameter.unit,
       value,
-      noise: above && below ? (above.noise - below.noise) / span : undefined,
-      amplitude: log(({ amplitude }) => amplitude),
-      power: log(({ power }) => power),
-      frequency: log(({ frequency }) => frequency),
+      noise: slope(({ noise }) => noise),
+      amplitude: slope(({ figures }) => Math.log(figures.amplitude)),
+      power: slope(({ figures }) => Math.log(figures.power)),
+      frequency: slope(({ figures }) => Math.log(figures.frequency)),
     };
   });
   const suggestions = derivatives.flatMap(({ name, unit, value, noise }): Suggestion[] => {
@@ -133,13 +143,15 @@ export function whatIf<Design>(
     if (!parameter || noise === undefined || !(Math.abs(noise) > WORTHLESS)) return [];
     const limit = Math.log(LARGEST_CHANGE);
     const change = Math.min(limit, Math.max(-limit, -improvement / noise));
-    const to = value * Math.exp(change);
+    const { atLeast = 0, atMost = Infinity } = parameter;
+    const to = Math.min(atMost, Math.max(atLeast, value * Math.exp(change)));
+    if (to === value) return [];
     return [{
       name,
       unit,
       from: value,
       to,
-      promised: noise * change,
+      promised: noise * Math.log(to / value),
       after: solve(parameter.write(design, to)),
     }];
   });
@@ -151,6 +163,26 @@ export function whatIf<Design>(
     derivatives: derivatives.sort((a, b) => size(b) - size(a)),
     suggestions: suggestions.sort((a, b) => gain(a) - gain(b)),
   };
+}
+
+/**
+ * Folds of a parameter, as logarithms, and the weights that make the derivative by the logarithm: central, or
+ * to one side where a limit is in the way; both are good to the square of the step. Empty at zero.
+ */
+function stencil<Design>(
+  { atLeast = 0, atMost = Infinity }: DesignParameter<Design>,
+  value: number,
+): { readonly fold: number; readonly weight: number }[] {
+  if (!(value > 0)) return [];
+  const h = DERIVATIVE_STEP;
+  const [least, most] = [value * Math.exp(-h) >= atLeast, value * Math.exp(h) <= atMost];
+  if (least && most) return [{ fold: h, weight: 0.5 / h }, { fold: -h, weight: -0.5 / h }];
+  const side = most ? h : -h;
+  return [
+    { fold: 0, weight: -1.5 / side },
+    { fold: side, weight: 2 / side },
+    { fold: 2 * side, weight: -0.5 / side },
+  ];
 }
 
 /** Solves variants of a design, each orbit continued from the design's own where that works. */

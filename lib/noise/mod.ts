@@ -133,3 +133,9 @@ export {
 } from "./curve_fit.ts";
 export { type MaskCoverage, maskCoverage } from "./mask_coverage.ts";
 export { type Neighbour, radioDemands, type RadioNumbers } from "./radio_demands.ts";
+export {
+  type CurveExplanation,
+  explainCurve,
+  type Explanation,
+  type Suspect,
+} from "./explain_curve.ts";

@@ -36,6 +36,8 @@ const REST_MOTION = 1e-9;
 const RUNAWAY = 1e8;
 /** Most points the motion may return to that are kept: most crossings within one round. */
 const MOST_ANCHORS = 24;
+/** A shorter return is a wiggle of the steps themselves, not a cycle. */
+const FEWEST_CYCLE_STEPS = 8;
 /** Steps without any crossing after which a new anchor is dropped. */
 const CYCLE_STEPS = 1500;
 const CROSSING_ITERATIONS = 12;
@@ -196,7 +198,10 @@ export class Transient {
       const crossed = this.#anchors.filter((anchor) =>
         section(anchor, before) < 0 && section(anchor, this.#y) >= 0
       );
-      const anchor = crossed.findLast((own) => this.#miss(own, this.#y) < RETURN_DISTANCE);
+      const anchor = crossed.findLast((own) =>
+        this.#record.length - own.first >= FEWEST_CYCLE_STEPS &&
+        this.#miss(own, this.#y) < RETURN_DISTANCE
+      );
       if (anchor) return this.#close(anchor);
       const latest = this.#anchors[this.#anchors.length - 1];
       const lost = this.#record.length - (latest?.first ?? 0) > CYCLE_STEPS;

@@ -91,6 +91,23 @@ Deno.test("whatIf: judges any noise it is given, such as the budget's total with
   assert(total! > white + 3, "1/f noise counts at 10 kHz");
 });
 
+Deno.test("whatIf: stays within a parameter's limits, with a derivative from one side", () => {
+  const { value, ...free } = { ...QUALITY, value: QUALITY.read(DESIGN) };
+  const of = (limits: { atLeast?: number; atMost?: number }) =>
+    whatIf(crossCoupledPair, DESIGN, { ...OPTIONS, parameters: [{ ...free, ...limits }] })!;
+  const open = of({});
+  for (const limits of [{ atLeast: value }, { atMost: value }]) {
+    const held = of(limits);
+    assertClose(held.derivatives[0]!.noise!, open.derivatives[0]!.noise!, { rtol: 1e-3, atol: 0 });
+  }
+  // A higher quality factor is better, but not to be had: no suggestion; or only to its limit.
+  assertEquals(of({ atMost: value }).suggestions, []);
+  const [own] = of({ atMost: 1.05 * value }).suggestions;
+  assertEquals(own!.to, 1.05 * value);
+  const { noise } = open.derivatives[0]!;
+  assertClose(own!.promised, noise! * Math.log(1.05), { rtol: 1e-3, atol: 0 });
+});
+
 Deno.test("whatIf: a parameter at zero has no derivative and no suggestion; no orbit, no answer", () => {
   const result = whatIf(crossCoupledPair, DESIGN, { ...OPTIONS, parameters: [LOAD] });
   assert(result);
