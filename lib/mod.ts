@@ -209,6 +209,8 @@ export {
   type CircuitElement,
   classCPair,
   type ClassCPairDesign,
+  coilElements,
+  type CoilPlace,
   colpitts,
   type ColpittsDesign,
   complementaryPair,
@@ -251,6 +253,8 @@ export {
   transistorElement,
   untailedPair,
   type UntailedPairDesign,
+  varactorElements,
+  type VaractorPlace,
   type WatchedVoltage,
 } from "./circuit/mod.ts";
 export {

@@ -31,7 +31,7 @@ export function renderPage(data: ReportData): string {
     <section aria-labelledby="verdicts"><h2 id="verdicts">Verdicts</h2>${
     verdictsMarkup(data)
   }</section>
-    ${data.sections.map(sectionMarkup)}
+    ${data.sections.map((section, k) => sectionMarkup(section, data.sections.slice(0, k)))}
     ${cautionMarkup(data)}
     ${waiversMarkup(data)}
     ${provenanceMarkup(data)}

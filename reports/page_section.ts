@@ -8,8 +8,15 @@ import { pageTable } from "./page_table.ts";
 import { sectionAnchor, verdictAnchor } from "./page_verdicts.ts";
 import type { FilledField, ReportCell, ReportSection } from "./report_data.ts";
 
-/** One template's section: the filled fields, then its cells in order. */
-export function sectionMarkup(section: ReportSection): Markup {
+/**
+ * One template's section: the filled fields, then its cells in order.
+ *
+ * @param earlier sections above on the page; a field they show is named here and not shown again
+ */
+export function sectionMarkup(
+  section: ReportSection,
+  earlier: readonly ReportSection[] = [],
+): Markup {
   const { template, title, cells, fields } = section;
   const id = sectionAnchor(template);
   const headingLevel = headingLadder(fields.length > 0 ? 3 : 2);
@@ -27,7 +34,7 @@ export function sectionMarkup(section: ReportSection): Markup {
     <section aria-labelledby="${id}">
     <h2 id="${id}">${title}</h2>
     <p class="note">Template <code>${template}</code></p>
-    ${fields.length > 0 && fieldsMarkup(fields, id)}
+    ${fields.length > 0 && fieldsMarkup(section, earlier)}
     ${body}
     </section>`;
 }
@@ -38,25 +45,40 @@ function headingLadder(above: number): (level: number) => number {
   return (level) => last = Math.min(Math.max(level + 1, 3), last + 1, 6);
 }
 
-function fieldsMarkup(fields: readonly FilledField[], id: string): Markup {
+function fieldsMarkup(
+  { template, fields }: ReportSection,
+  earlier: readonly ReportSection[],
+): Markup {
+  const shownIn = (name: string) =>
+    earlier.find((section) => section.fields.some((field) => field.name === name));
+  const own = fields.filter(({ name }) => shownIn(name) === undefined);
+  const shared = fields.filter(({ name }) => shownIn(name) !== undefined);
   return markup`
-    <h3 id="${id}-filled-fields">Fields</h3>
+    <h3 id="${sectionAnchor(template)}-filled-fields">Fields</h3>
+    ${own.length > 0 && fieldsTable(own)}
     ${
-    pageTable({
-      caption: "What the template asked for, and what was filled in",
-      columns: ["field", "value", "allowed", "question", "reason", "hand estimate"],
-      rows: fields.map((field) => ({
-        cells: [
-          markup`<code>${field.name}</code>`,
-          field.text,
-          allowedText(field),
-          field.question,
-          (field.kind === "fixed" ? field.reason : field.why) ?? "none given",
-          field.estimate ?? "\u2013",
-        ],
-      })),
-    })
+    shared.length > 0 && markup`
+    <p class="note">Shown above already: ${
+      shared.map(({ name, text }, k) => markup`${k > 0 && ", "}<code>${name}</code> ${text}`)
+    }</p>`
   }`;
+}
+
+function fieldsTable(fields: readonly FilledField[]): Markup {
+  return pageTable({
+    caption: "What the template asked for, and what was filled in",
+    columns: ["field", "value", "allowed", "question", "reason", "hand estimate"],
+    rows: fields.map((field) => ({
+      cells: [
+        markup`<code>${field.name}</code>`,
+        field.text,
+        allowedText(field),
+        field.question,
+        (field.kind === "fixed" ? field.reason : field.why) ?? "none given",
+        field.estimate ?? "\u2013",
+      ],
+    })),
+  });
 }
 
 function allowedText(field: FilledField): Markup | string {

@@ -26,6 +26,8 @@ const ROOM = 8;
 const FAR = 30;
 /** A source below this share at every offset goes into "others". */
 const SMALL_SHARE = 0.03;
+/** Contributors told apart: with "others", one for each colour there is. */
+const MOST_TOLD = 7;
 const MASK_STYLE: SeriesStyle = { color: "currentColor", dash: "", symbol: "triangle" };
 
 /** Options of {@linkcode noiseCurveChart}. */
@@ -194,8 +196,13 @@ export function contributorsChart(
     name,
     values: budget.offsets.map((_, k) => phase[k]! / sums[k]!),
   }));
-  const large = shares.filter(({ values }) => Math.max(...values) >= SMALL_SHARE);
-  const small = shares.filter(({ values }) => Math.max(...values) < SMALL_SHARE);
+  const peak = ({ values }: (typeof shares)[number]) => Math.max(...values);
+  const told = new Set(
+    shares.filter((own) => peak(own) >= SMALL_SHARE).sort((a, b) => peak(b) - peak(a))
+      .slice(0, MOST_TOLD),
+  );
+  const large = shares.filter((own) => told.has(own));
+  const small = shares.filter((own) => !told.has(own));
   const others = small.length === 0 ? [] : [{
     name: "others",
     values: budget.offsets.map((_, k) => small.reduce((sum, { values }) => sum + values[k]!, 0)),

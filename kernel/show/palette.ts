@@ -34,13 +34,15 @@ export const SERIES_COLORS: readonly SeriesColor[] = [
   { light: "#6d2480", dark: "#d6a2ea", either: "#a35fb5" },
   { light: "#8c6a00", dark: "#ecd25a", either: "#957414" },
   { light: "#4a5560", dark: "#c3ccd3", either: "#76828c" },
+  { light: "#a3184a", dark: "#f58fb0", either: "#c94a76" },
+  { light: "#6b3f1d", dark: "#d3a982", either: "#a06a3c" },
 ];
 
 const DASHES = ["", "7 3", "2 3", "9 3 2 3", "4 2", "1 4"] as const;
 const SYMBOLS = ["circle", "square", "triangle", "diamond", "cross", "star"] as const;
 
 /**
- * The style of series number `index`; after six, colours come again with another dash and symbol.
+ * The style of series number `index`; after eight, colours come again with another dash and symbol.
  *
  * @param index [1] counted from 0
  */

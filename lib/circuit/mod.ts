@@ -52,3 +52,5 @@ export { differentialColpitts, type DifferentialColpittsDesign } from "./differe
 export { steeredColpitts, type SteeredColpittsDesign } from "./steered_colpitts.ts";
 export { loadedLoopGain } from "./loaded_loop_gain.ts";
 export { topologies, type TopologyName } from "./topologies.ts";
+export { coilElements, type CoilPlace } from "./coil_elements.ts";
+export { varactorElements, type VaractorPlace } from "./varactor_elements.ts";

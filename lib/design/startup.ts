@@ -69,8 +69,7 @@ export function startup(oscillator: BuiltOscillator): Startup | NoEquilibrium {
     re: pole.re,
     im: pole.im,
   }));
-  const tank = named.find(({ name, im }) => name === "tank" && im > 0) ??
-    named.find(({ im }) => im > 0);
+  const tank = tankPole(named);
   if (!tank) {
     return {
       status: "no equilibrium",
@@ -79,7 +78,7 @@ export function startup(oscillator: BuiltOscillator): Startup | NoEquilibrium {
       iterations: equilibrium.iterations,
     };
   }
-  const { angularFrequency, conductance } = resistivePort(oscillator, equilibrium, tank.im);
+  const { angularFrequency, conductance } = resistivePort(oscillator, equilibrium, tank.near);
   return {
     status: "found",
     equilibrium,
@@ -90,6 +89,25 @@ export function startup(oscillator: BuiltOscillator): Startup | NoEquilibrium {
     poles: named,
     otherUnstable: named.filter(({ name, re }) => re > 0 && name !== tank.name),
   };
+}
+
+/**
+ * The tank's pole pair: its growth, and an angular frequency near which its port is resistive. With a
+ * gain far above the quality factor the pair is real; it then lies around the tank's frequency as
+ * its geometric mean.
+ */
+function tankPole(
+  poles: readonly NamedPole[],
+): { name: string; re: number; near: number } | undefined {
+  const own = poles.filter(({ name }) => name === "tank");
+  const ringing = own.find(({ im }) => im > 0);
+  if (ringing) return { name: ringing.name, re: ringing.re, near: ringing.im };
+  const [fast, slow] = own;
+  if (fast && slow && fast.re * slow.re > 0) {
+    return { name: fast.name, re: fast.re, near: Math.sqrt(fast.re * slow.re) };
+  }
+  const other = poles.find(({ im }) => im > 0);
+  return other && { name: other.name, re: other.re, near: other.im };
 }
 
 /** Name of the pattern that holds the largest part of a pole's mode. */

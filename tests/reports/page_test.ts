@@ -114,6 +114,15 @@ Deno.test("sectionMarkup: fields with question, bounds, reason and hand estimate
   ) assert(text.includes(words), words);
 });
 
+Deno.test("sectionMarkup: a field that a section above shows is named with its value, not shown again", () => {
+  const [section] = PAGE_DATA.sections;
+  const { body } = parseDocument(sectionMarkup(section!, [section!]).text);
+  const [first] = section!.fields;
+  assert(body.textContent!.includes("Shown above already"));
+  assert(body.textContent!.includes(`${first!.name} ${first!.text}`));
+  assert(!body.textContent!.includes(first!.question), "the question stands above");
+});
+
 Deno.test("sectionMarkup: code is folded; the sheet's own display and progress lines are left out", () => {
   const markup = sectionMarkup(PAGE_DATA.sections[0]!).text;
   assert(/<details class="code"><summary>Code of cell sweep<\/summary>/.test(markup));

@@ -39,6 +39,25 @@ for (const transconductance of [2e-3, 6.6e-3, 20e-3]) {
   });
 }
 
+Deno.test("startup: a gain far above the quality factor makes the tank's poles real; it starts all the same", () => {
+  const { resistance, inductance, capacitance } = TANK;
+  const transconductance = 0.4;
+  const found = startup(idealPair({ ...TANK, transconductance }));
+  assert(found.status === "found");
+  const gain = transconductance * resistance / 2;
+  assertClose(found.loopGain, gain, { rtol: 1e-9, atol: 0, what: "loop gain" });
+  const resonance = 1 / Math.sqrt(inductance * capacitance);
+  assertClose(found.frequency, resonance / (2 * Math.PI), { rtol: 1e-9, atol: 0 });
+  // The larger root of s^2 C + s (1 - a) / R + 1 / L.
+  const rate = (gain - 1) / (2 * resistance * capacitance);
+  assert(rate > resonance, "the poles are real");
+  assertClose(found.growthRate, rate + Math.sqrt(rate ** 2 - resonance ** 2), {
+    rtol: 1e-9,
+    atol: 0,
+  });
+  assert(found.starts);
+});
+
 Deno.test("startup: loop gain of the pair is 1 where the tank's pole crosses the axis", () => {
   const at = (current: number) => {
     const found = startup(
