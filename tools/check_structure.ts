@@ -9,8 +9,15 @@ import { readSourceTree } from "./structure/source_tree.ts";
 import { findUntestedFiles } from "./structure/untested_files.ts";
 import { finish, projectRoot } from "./findings.ts";
 
-/** Every fault in the structure of the tree at `root`, one line each. */
-export function checkStructure(root: string): string[] {
+/**
+ * Every fault in the structure of the tree at `root`, one line each.
+ *
+ * @param longFiles files that may be long, with the reason; this project's own without it
+ */
+export function checkStructure(
+  root: string,
+  { longFiles }: { readonly longFiles?: Readonly<Record<string, string>> } = {},
+): string[] {
   const files = readSourceTree(root);
   if (files.length === 0) return [`${root}: holds no TypeScript file`];
   return [
@@ -20,7 +27,7 @@ export function checkStructure(root: string): string[] {
     ...findModuleListFaults(files),
     ...findUntestedFiles(files),
     ...findErrorFaults(files),
-    ...findLongFiles(files),
+    ...findLongFiles(files, longFiles),
   ];
 }
 

@@ -26,8 +26,8 @@ const ROOM = 8;
 const FAR = 30;
 /** A source below this share at every offset goes into "others". */
 const SMALL_SHARE = 0.03;
-/** Contributors told apart: with "others", one for each colour there is. */
-const MOST_TOLD = 7;
+/** Contributors told apart, one for each colour there is. */
+const MOST_TOLD = 8;
 const MASK_STYLE: SeriesStyle = { color: "currentColor", dash: "", symbol: "triangle" };
 
 /** Options of {@linkcode noiseCurveChart}. */
