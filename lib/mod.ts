@@ -245,6 +245,7 @@ export {
   type TailFilter,
   tailResistanceFor,
   type TankDesign,
+  tankOfCoil,
   tankResistance,
   thermalAmplitude,
   topologies,

@@ -13,6 +13,7 @@ import {
   differentialKick,
   differentialTank,
   SUPPLY,
+  tankLosses,
   tappedTank,
   watchedTransistors,
   type Workshop,
@@ -112,7 +113,7 @@ export function buildDifferentialColpitts(
       ...foot.patterns,
     ],
     parts: {
-      tank: ["tank loss plus", "tank loss minus"],
+      tank: tankLosses(tank),
       pair: ["core plus", "core minus"],
       mirror: ["mirror"],
       ...foot.parts,

@@ -12,6 +12,7 @@ import {
   currentLeaving,
   differentialTank,
   SUPPLY,
+  tankLosses,
   tappedTank,
   watchedTransistors,
   type Workshop,
@@ -98,7 +99,7 @@ export function buildPair(
       ...foot.patterns,
     ],
     parts: {
-      tank: ["tank loss plus", "tank loss minus"],
+      tank: tankLosses(tank),
       pair: ["pair plus", "pair minus"],
       ...foot.parts,
     },

@@ -5,12 +5,14 @@
  */
 import { resolvePassives } from "../device/resolve_passives.ts";
 import type { PassiveFactors } from "../device/resolve_passives.ts";
+import type { CoilModel } from "../device/inductor_model.ts";
 import { resolveTransistor } from "../device/resolve_transistor.ts";
 import type { TechnologyCard } from "../device/technology_card.ts";
 import { Transistor } from "../device/transistor.ts";
 import type { TransistorOperatingPoint } from "../device/transistor_operating_point.ts";
 import type { TransistorSize } from "../device/transistor_parameters.ts";
 import type { Circuit } from "./circuit.ts";
+import { coilElements } from "./coil_elements.ts";
 import { type CircuitElement, type DeviceElement, GROUND, transistorElement } from "./element.ts";
 import { tankResistance } from "./tank_resistance.ts";
 import type {
@@ -116,6 +118,20 @@ export function tappedTank(
     readonly shop: Workshop;
   },
 ): CircuitElement[] {
+  const capacitor = capacitors([
+    ["tank capacitor", ["plus", "minus"], tank.capacitance * passives.capacitor],
+  ]);
+  if (tank.coil) {
+    const place = {
+      plus: "plus",
+      minus: "minus",
+      tap,
+      frequency: tank.qualityFrequency,
+      temperature,
+    };
+    const coil = coilElements("coil", tank.coil, place);
+    return [...coil.map((element) => heated(element, passives.metalResistance)), ...capacitor];
+  }
   const resistance = tankResistance(tank) / passives.metalResistance;
   return [
     tappedCoil(tank, { tap, temperature }),
@@ -126,8 +142,32 @@ export function tappedTank(
       resistance: resistance / 2,
       temperature,
     })),
-    ...capacitors([["tank capacitor", ["plus", "minus"], tank.capacitance * passives.capacitor]]),
+    ...capacitor,
   ];
+}
+
+/** A coil whose metal resists by a factor more; one without a tap is refused. */
+function heated(element: CircuitElement, factor: number): CircuitElement {
+  if (element.kind !== "inductor") return element;
+  if (element.windings.length !== 2) {
+    throw new RangeError("Cannot build the tank: its coil must have a centre tap, got one winding");
+  }
+  return {
+    ...element,
+    windings: element.windings.map((winding) => ({
+      ...winding,
+      seriesResistance: winding.seriesResistance * factor,
+    })),
+  };
+}
+
+/** Names of what makes the loss of a centre-tapped tank. */
+export function tankLosses({ coil, qualityFrequency }: TankDesign): string[] {
+  if (!coil) return ["tank loss plus", "tank loss minus"];
+  const resistors = coil.elements(qualityFrequency).flatMap((element) =>
+    element.kind === "resistor" ? [`coil ${element.name}`] : []
+  );
+  return ["coil", ...resistors];
 }
 
 /** Capacitors; those of 0 F or undefined are left out. */
@@ -279,8 +319,13 @@ export function differentialTank(
     plus: "plus",
     minus: "minus",
     inductance: tank.inductance,
-    conductance: () => 1 / resistance,
+    conductance: tank.coil ? (angular) => lossOf(tank.coil!, angular) : () => 1 / resistance,
   };
+}
+
+/** Loss of a coil as a conductance across its ends [S] at an angular frequency. */
+function lossOf(coil: CoilModel, angularFrequency: number): number {
+  return coil.admittance(angularFrequency / (2 * Math.PI)).re;
 }
 
 /**

@@ -10,6 +10,7 @@ import {
   differentialTank,
   mirroredSources,
   SUPPLY,
+  tankLosses,
   tappedTank,
   watchedTransistors,
   workshop,
@@ -156,7 +157,7 @@ export const classCPair: Topology<ClassCPairDesign> = {
         { name: "mirror node", weights: { mirror: 1 } },
       ],
       parts: {
-        tank: ["tank loss plus", "tank loss minus"],
+        tank: tankLosses(tank),
         pair: ["pair plus", "pair minus"],
         tail: ["tail"],
         mirror: ["mirror"],

@@ -54,3 +54,4 @@ export { loadedLoopGain } from "./loaded_loop_gain.ts";
 export { topologies, type TopologyName } from "./topologies.ts";
 export { coilElements, type CoilPlace } from "./coil_elements.ts";
 export { varactorElements, type VaractorPlace } from "./varactor_elements.ts";
+export { tankOfCoil } from "./tank_of_coil.ts";

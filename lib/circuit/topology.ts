@@ -1,4 +1,5 @@
 import type { Corner } from "../device/corner.ts";
+import type { CoilModel } from "../device/inductor_model.ts";
 import type { TechnologyCard } from "../device/technology_card.ts";
 import type { Circuit } from "./circuit.ts";
 import type { Schematic } from "./schematic.ts";
@@ -24,6 +25,13 @@ export interface TankDesign {
   readonly capacitance: number;
   /** Coupling of the two halves of the coil [1]. @default 0.6 */
   readonly coupling?: number;
+  /**
+   * The coil itself, with a centre tap, as lumped elements with losses of their own, at the nominal
+   * temperature of the card: the metal grows hotter with the condition. The inductance and
+   * the quality factor beside it then serve the hand formulas only; topologies whose coil has no tap
+   * do not take one.
+   */
+  readonly coil?: CoilModel;
 }
 
 /** The capacitive divider of a Colpitts oscillator. */
