@@ -1,6 +1,6 @@
 import { formatColumn } from "./_format_column.ts";
 import { withUnit } from "./_display_unit.ts";
-import { csvText } from "./_csv_text.ts";
+import { csvLink } from "./_csv_link.ts";
 import { type Markup, markup, raw } from "./markup.ts";
 import { Showable } from "./showable.ts";
 import type { TableCell, TableColumn } from "./table_parts.ts";
@@ -40,9 +40,7 @@ export function table({ columns, rows, caption, csv }: TableOptions): Showable {
     }
   });
   const shown = columns.map((column, k) => showColumn(column, rows.map((row) => row[k]!)));
-  const link = csv === undefined
-    ? undefined
-    : csvLink(csv, csvText({ columns, rows }), rows.length);
+  const link = csv === undefined ? undefined : csvLink(csv, { columns, rows });
   return new Showable({
     "text/plain": plainText(shown, rows.length, caption),
     "text/html": tableMarkup(shown, { rowCount: rows.length, caption, link }).text,
@@ -116,10 +114,4 @@ const NUMERIC = raw(' style="text-align:right;font-variant-numeric:tabular-nums"
 
 function align(numeric: boolean): Markup | false {
   return numeric && NUMERIC;
-}
-
-function csvLink(file: string, text: string, rowCount: number): Markup {
-  const address = `data:text/csv;charset=utf-8,${encodeURIComponent(text)}`;
-  const rows = rowCount === 1 ? "1 row" : `${rowCount} rows`;
-  return markup`<p><a download="${file}" href="${address}">Download ${file} (${rows}, SI units)</a></p>`;
 }

@@ -126,6 +126,17 @@ const DRAWN:
   readonly (readonly [string, AnyTopology, { readonly current: number }, WiringOptions])[] = (
     [
       ["n_pair", topologies.n_pair, PAIR_DESIGN, TAPPED],
+      [
+        "n_pair with every capacitor",
+        topologies.n_pair,
+        {
+          ...PAIR_DESIGN,
+          loadCapacitance: 50e-15,
+          tailCapacitance: 200e-15,
+          mirrorCapacitance: 10e-12,
+        },
+        TAPPED,
+      ],
       ["n_pair with tail filter", topologies.n_pair, FILTERED_PAIR, TAPPED],
       ["p_pair", topologies.p_pair, P_PAIR, GROUNDED],
       [
