@@ -73,6 +73,7 @@ const REFERENCE_POWER = 1e-3;
 const ASSUMPTIONS: readonly string[] = [
   "the tank's loss acts as a parallel conductance with the noise of its own temperature",
   "the tank voltage is near-sinusoidal; harmonics enter by the distortion allowance",
+  "the tank's mode leads: no other mode locked to it is larger, keeping energy of its own",
   "white noise, 1/f^2 region: L is half the one-sided spectral density of phase",
   "quality factor of the loaded tank at the frequency of oscillation",
   "power is the whole power from the supply",
