@@ -27,8 +27,8 @@ const HARMONICS = 9;
 /** Differential fundamental over the supply below which the orbit is in another mode than the tank's [1]. */
 const ANOTHER_MODE = 1e-3;
 /**
- * Common-mode harmonic over each side's fundamental above which another mode leads [1]. Of 10,000 sizings four steered
- * Colpitts lie there, their common mode near twice the frequency unstable by itself; it keeps energy that the ceiling
+ * Common-mode harmonic over each side's fundamental above which another mode leads [1]. Of 1,000 steered
+ * Colpitts four lie there, their common mode near twice the frequency unstable by itself; it keeps energy that the ceiling
  * of the tank leaves out, and two of the four come out above (by 4.8 and 5.7 dB).
  */
 const COMMON_MODE_LEADS = 1;
