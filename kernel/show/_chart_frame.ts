@@ -46,6 +46,19 @@ interface PlacedLabel {
   readonly anchor: "start" | "middle" | "end";
 }
 
+/** The vertical axis' name, level above the top left of the drawing. */
+export function axisName(name: string): Plot.Markish {
+  return Plot.text([name], {
+    frameAnchor: "top-left",
+    dx: -FRAME.left,
+    dy: -10,
+    textAnchor: "start",
+    lineAnchor: "bottom",
+    text: (d: string) => d,
+    fill: "currentColor",
+  });
+}
+
 /** Lays out the shared horizontal axis, its bands and its marks. */
 export class ChartFrame {
   /** The axis' values in the unit of the drawing. */
@@ -152,15 +165,7 @@ export class ChartFrame {
       },
       y: { label: null, grid: true, ...y },
       marks: [
-        Plot.text([yLabel], {
-          frameAnchor: "top-left",
-          dx: -FRAME.left,
-          dy: -10,
-          textAnchor: "start",
-          lineAnchor: "bottom",
-          text: (d: string) => d,
-          fill: "currentColor",
-        }),
+        axisName(yLabel),
         ...this.#bands.map((band, i) =>
           Plot.rect([band], {
             x1: "x1",

@@ -9,7 +9,7 @@ import type { FamilyLimit, InductanceColumn } from "../../lib/design/inductance_
 import { formatQuantity } from "../../lib/quantity/format_quantity.ts";
 import { chartFigure, type KeyEntry } from "./_chart_figure.ts";
 import { contourLevels, contourMarks } from "./_contour_marks.ts";
-import { FRAME } from "./_chart_frame.ts";
+import { axisName, FRAME } from "./_chart_frame.ts";
 import { withUnit } from "./_display_unit.ts";
 import { drawSvg } from "./_draw_svg.ts";
 import { type Box, LabelBoxes, type LabelOffset } from "./_label_boxes.ts";
@@ -100,15 +100,7 @@ export function inductanceMap(
     x: frame.axis("x", "programmed current"),
     y: frame.axis("y", "inductance"),
     marks: [
-      Plot.text([withUnit("inductance", frame.unitY.unit)], {
-        frameAnchor: "top-left",
-        dx: -FRAME.left,
-        dy: -10,
-        textAnchor: "start",
-        lineAnchor: "bottom",
-        text: (d: string) => d,
-        fill: "currentColor",
-      }),
+      axisName(withUnit("inductance", frame.unitY.unit)),
       ...shades,
       ...contourMarks(frame, { levels, labels }),
       ...quietestLine(frame),

@@ -7,7 +7,7 @@ import * as Plot from "@observablehq/plot";
 import type { TopologyResult } from "../../lib/design/compare_topologies.ts";
 import { formatQuantity } from "../../lib/quantity/format_quantity.ts";
 import { chartFigure } from "./_chart_figure.ts";
-import { FRAME } from "./_chart_frame.ts";
+import { axisName, FRAME } from "./_chart_frame.ts";
 import { withUnit } from "./_display_unit.ts";
 import { drawSvg } from "./_draw_svg.ts";
 import { LabelBoxes, type LabelOffset } from "./_label_boxes.ts";
@@ -149,15 +149,7 @@ export function topologyChart(
     },
     y: { domain: y, label: null, ticks: 6 },
     marks: [
-      Plot.text(["worst startup loop gain"], {
-        frameAnchor: "top-left",
-        dx: -FRAME.left,
-        dy: -10,
-        textAnchor: "start",
-        lineAnchor: "bottom",
-        text: (d: string) => d,
-        fill: "currentColor",
-      }),
+      axisName("worst startup loop gain"),
       Plot.rect([{ x1: x[0], x2: x[1], y1: y[0], y2: leastLoopGain }], shaded(color)),
       Plot.ruleY([leastLoopGain], {
         stroke: "currentColor",

@@ -2,7 +2,11 @@ import { BOLTZMANN, ELEMENTARY_CHARGE } from "../quantity/constants.ts";
 import { channelCharges } from "./_channel_charges.ts";
 import { inversionCharge, inversionSlope } from "./inversion.ts";
 import { Junction } from "./junction.ts";
-import { inversionName, type TransistorOperatingPoint } from "./transistor_operating_point.ts";
+import {
+  inversionName,
+  terminalCapacitances,
+  type TransistorOperatingPoint,
+} from "./transistor_operating_point.ts";
 import type { TransistorParameters, TransistorSize } from "./transistor_parameters.ts";
 
 /** Length of the `out` array of {@linkcode Transistor.evaluate}. */
@@ -254,11 +258,7 @@ export class Transistor {
       saturationVoltage,
       region: Math.abs(vd - vs) < saturationVoltage ? "triode" : "saturation",
       noiseConductance: noise * noise / (4 * BOLTZMANN * this.parameters.temperature),
-      gateSourceCapacitance: -values[30]!,
-      gateDrainCapacitance: -values[28]!,
-      gateBulkCapacitance: -values[31]!,
-      drainBulkCapacitance: -values[36]!,
-      sourceBulkCapacitance: -values[38]!,
+      ...terminalCapacitances(values),
     };
   }
 

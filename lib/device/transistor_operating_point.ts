@@ -41,3 +41,19 @@ export function inversionName(coefficient: number): "weak" | "moderate" | "stron
   if (coefficient < WEAK_BELOW) return "weak";
   return coefficient > STRONG_ABOVE ? "strong" : "moderate";
 }
+
+/**
+ * Capacitances between terminals [F], each the fall of one terminal's charge with another's voltage.
+ *
+ * @internal
+ * @param values what a transistor's `evaluate` fills
+ */
+export function terminalCapacitances(values: Float64Array) {
+  return {
+    gateSourceCapacitance: -values[30]!,
+    gateDrainCapacitance: -values[28]!,
+    gateBulkCapacitance: -values[31]!,
+    drainBulkCapacitance: -values[36]!,
+    sourceBulkCapacitance: -values[38]!,
+  };
+}

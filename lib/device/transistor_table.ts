@@ -4,7 +4,10 @@ import { characterizedAsN, checkTable, conductanceErrors } from "./_transistor_t
 import { deviatedTransistor, type TransistorDeviation } from "./mismatch.ts";
 import { Transistor, TRANSISTOR_VALUES } from "./transistor.ts";
 import type { TransistorModel } from "./transistor_model.ts";
-import type { TransistorOperatingPoint } from "./transistor_operating_point.ts";
+import {
+  terminalCapacitances,
+  type TransistorOperatingPoint,
+} from "./transistor_operating_point.ts";
 import type { TransistorParameters, TransistorSize } from "./transistor_parameters.ts";
 import type { TransistorTableData } from "./transistor_table_data.ts";
 
@@ -209,11 +212,7 @@ export class TransistorTable implements TransistorModel {
       gms: this.#scale * (at[1]! + at[2]! + at[3]!),
       gds: this.#scale * at[2]!,
       noiseConductance: noise * noise / (4 * BOLTZMANN * this.parameters.temperature),
-      gateSourceCapacitance: -values[30]!,
-      gateDrainCapacitance: -values[28]!,
-      gateBulkCapacitance: -values[31]!,
-      drainBulkCapacitance: -values[36]!,
-      sourceBulkCapacitance: -values[38]!,
+      ...terminalCapacitances(values),
     };
   }
 

@@ -11,20 +11,9 @@ import { Transistor, TRANSISTOR_VALUES } from "../../lib/device/transistor.ts";
 import { startup } from "../../lib/design/startup.ts";
 import { findOrbit } from "../../lib/orbit/find_orbit.ts";
 import { Orbit } from "../../lib/orbit/orbit.ts";
-import { illustrativeCard } from "../lib/device/_card.ts";
+import { CARD, DESIGN, NOMINAL } from "../lib/design/_pair.ts";
 
-export const CARD = illustrativeCard();
-export const NOMINAL: Condition = { corner: "typical", temperature: 300.15, supply: 1 };
-
-/** 5 GHz, R = 565 ohm. */
-export const DESIGN: CrossCoupledPairDesign = {
-  tank: { inductance: 1.5e-9, quality: 12, qualityFrequency: 5e9, capacitance: 0.5e-12 },
-  pair: { width: 20e-6, length: 60e-9 },
-  tail: { width: 60e-6, length: 200e-9 },
-  current: 2e-3,
-  mirrorRatio: 4,
-  loadCapacitance: 50e-15,
-};
+export { CARD, DESIGN, NOMINAL };
 
 /** A wide, long tail device: low saturation voltage and next to no output conductance. */
 export const STIFF_TAIL = { width: 2e-3, length: 8e-6 };
